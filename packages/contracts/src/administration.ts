@@ -41,7 +41,11 @@ type RoleScope = { role: string; stationIds: readonly string[]; partyIds: readon
 
 function refineScope(scope: RoleScope, context: z.RefinementCtx): void {
   if (scope.role === 'uploader' && scope.stationIds.length === 0) {
-    context.addIssue({ code: 'custom', path: ['stationIds'], message: 'A log uploader needs at least one station.' })
+    context.addIssue({
+      code: 'custom',
+      path: ['stationIds'],
+      message: 'A log uploader needs at least one station.',
+    })
   }
   if (scope.role === 'publisher' && scope.partyIds.length === 0) {
     context.addIssue({ code: 'custom', path: ['partyIds'], message: 'A publisher needs at least one party.' })
@@ -125,7 +129,12 @@ export const systemHealthSchema = z.object({
   checkedAt: instantSchema,
   database: z.object({ ok: z.boolean(), sizeBytes: z.number(), version: z.string() }),
   redis: z.object({ ok: z.boolean() }),
-  storage: z.object({ kind: z.enum(['disk', 's3']), ok: z.boolean(), objects: z.number(), bytes: z.number() }),
+  storage: z.object({
+    kind: z.enum(['disk', 's3']),
+    ok: z.boolean(),
+    objects: z.number(),
+    bytes: z.number(),
+  }),
   queues: z.array(
     z.object({
       kind: z.string(),
@@ -137,7 +146,14 @@ export const systemHealthSchema = z.object({
       oldestWaitingAt: instantSchema.nullable(),
     }),
   ),
-  workers: z.array(z.object({ name: z.string(), lastSeenAt: instantSchema, indexRecordings: z.number(), indexBytes: z.number() })),
+  workers: z.array(
+    z.object({
+      name: z.string(),
+      lastSeenAt: instantSchema,
+      indexRecordings: z.number(),
+      indexBytes: z.number(),
+    }),
+  ),
   recentFailures: z.array(z.object({ kind: z.string(), message: z.string(), failedAt: instantSchema })),
 })
 export type SystemHealth = z.infer<typeof systemHealthSchema>

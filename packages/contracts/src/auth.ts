@@ -19,7 +19,10 @@ const utf8 = new TextEncoder()
 export const passwordSchema = z
   .string()
   .min(12, 'Use at least 12 characters.')
-  .refine((password) => utf8.encode(password).length <= 72, 'Use at most 72 bytes; some letters take two or more.')
+  .refine(
+    (password) => utf8.encode(password).length <= 72,
+    'Use at most 72 bytes; some letters take two or more.',
+  )
 
 export const signedInUserSchema = z.object({
   id: userIdSchema,

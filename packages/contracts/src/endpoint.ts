@@ -43,11 +43,17 @@ export type EndpointBody<E extends Endpoint> = E extends { body: infer Schema ex
   : undefined
 
 /** What a handler returns, before the answer schema picks the fields that may leave the server. */
-export type EndpointResult<E extends Endpoint> = E['answer'] extends { kind: 'json'; schema: infer Schema extends z.ZodType }
+export type EndpointResult<E extends Endpoint> = E['answer'] extends {
+  kind: 'json'
+  schema: infer Schema extends z.ZodType
+}
   ? z.input<Schema>
   : undefined
 
 /** What a client receives after parsing. */
-export type EndpointOutput<E extends Endpoint> = E['answer'] extends { kind: 'json'; schema: infer Schema extends z.ZodType }
+export type EndpointOutput<E extends Endpoint> = E['answer'] extends {
+  kind: 'json'
+  schema: infer Schema extends z.ZodType
+}
   ? z.output<Schema>
   : undefined

@@ -101,7 +101,10 @@ export function textSchema(label: string, maximumLength: number) {
     .trim()
     .min(1, `${label} is needed.`)
     .max(maximumLength, `${label} may have at most ${maximumLength} characters.`)
-    .refine((text) => !/\p{Cc}/u.test(text.replaceAll('\n', ' ')), `${label} contains characters that cannot be shown.`)
+    .refine(
+      (text) => !/\p{Cc}/u.test(text.replaceAll('\n', ' ')),
+      `${label} contains characters that cannot be shown.`,
+    )
 }
 
 export const emailSchema = z

@@ -21,7 +21,7 @@ export const problemKinds = {
   'file-too-large': { status: 413, title: 'The file is too large' },
   'local-time-invalid': { status: 422, title: 'That local time needs a decision' },
   'audio-expired': { status: 410, title: 'The audio is no longer kept' },
-  'unavailable': { status: 503, title: 'The service is not ready' },
+  unavailable: { status: 503, title: 'The service is not ready' },
   'internal-error': { status: 500, title: 'Something went wrong on our side' },
 } as const satisfies Record<string, { status: number; title: string }>
 

@@ -56,7 +56,10 @@ export const licenceInputSchema = z
   .object({
     validFrom: localDateSchema,
     validTo: localDateSchema.nullable(),
-    monthlyFeeMinor: amountMinorTextSchema.refine((text) => !text.startsWith('-'), 'A fee cannot be negative.'),
+    monthlyFeeMinor: amountMinorTextSchema.refine(
+      (text) => !text.startsWith('-'),
+      'A fee cannot be negative.',
+    ),
     worksPartPpm: partsPerMillionSchema,
   })
   .refine((licence) => licence.validTo === null || licence.validTo >= licence.validFrom, {
@@ -135,7 +138,15 @@ export const updateLicence = defineEndpoint({
 })
 
 /** What a stretch of airtime is, as drawn on the airtime ribbon. */
-export const airtimeKindSchema = z.enum(['held', 'music', 'speech', 'silence', 'play', 'review', 'unidentified'])
+export const airtimeKindSchema = z.enum([
+  'held',
+  'music',
+  'speech',
+  'silence',
+  'play',
+  'review',
+  'unidentified',
+])
 export type AirtimeKind = z.infer<typeof airtimeKindSchema>
 
 export const airtimeSpanSchema = z.object({

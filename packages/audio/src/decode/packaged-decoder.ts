@@ -88,7 +88,7 @@ export async function* decodeWithPackage(
   try {
     if (plan.header) await decoder(plan.header)
     let readBytes = 4096
-    for (let position = plan.startOffset; position < plan.endOffset; ) {
+    for (let position = plan.startOffset; position < plan.endOffset;) {
       const bytes = await source.readAt(position, Math.min(readBytes, plan.endOffset - position))
       if (bytes.length === 0) break
       position += bytes.length

@@ -25,7 +25,8 @@ const ADTS_RATES_HZ = [
 /** Reads an MPEG-1/2/2.5 layer II or III frame header. Free-format frames are not accepted. */
 export function parseMpegFrame(bytes: Uint8Array, offset: number): FrameHeader | null {
   const [b0, b1, b2, b3] = bytes.subarray(offset, offset + 4)
-  if (b0 !== 0xff || b1 === undefined || b2 === undefined || b3 === undefined || (b1 & 0xe0) !== 0xe0) return null
+  if (b0 !== 0xff || b1 === undefined || b2 === undefined || b3 === undefined || (b1 & 0xe0) !== 0xe0)
+    return null
   const versionBits = (b1 >> 3) & 3
   const layerBits = (b1 >> 1) & 3
   const isLayer3 = layerBits === 1
@@ -99,7 +100,10 @@ const CHAIN_FRAMES = 4
  * The first offset from which frames really follow each other, so that garbage that merely looks like a sync word is
  * passed over. A lone frame counts only where it is the very first thing and fills the rest of the bytes.
  */
-export function findFirstFrame(bytes: Uint8Array, from: number): { offset: number; frame: FrameHeader } | null {
+export function findFirstFrame(
+  bytes: Uint8Array,
+  from: number,
+): { offset: number; frame: FrameHeader } | null {
   for (let offset = bytes.indexOf(0xff, from); offset >= 0; offset = bytes.indexOf(0xff, offset + 1)) {
     for (const parse of [parseMpegFrame, parseAdtsFrame]) {
       const { first, frames, endOffset } = countChainedFrames(bytes, offset, parse, CHAIN_FRAMES)

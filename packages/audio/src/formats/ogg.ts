@@ -109,7 +109,7 @@ async function sumOfLinks(source: ByteSource, start: number): Promise<number> {
     if (current) seconds += Math.max(0, granule - current.preSkip) / current.sampleRateHz
     granule = 0
   }
-  for (let position = start; position < source.sizeBytes; ) {
+  for (let position = start; position < source.sizeBytes;) {
     const block = await source.readAt(position, 16 * MAXIMUM_PAGE_BYTES)
     let offset = 0
     while (offset < block.length) {

@@ -14,7 +14,10 @@ function besselI0(x: number): number {
  * Formulae: Kaiser 1974, as printed in Oppenheim & Schafer, Discrete-Time Signal Processing, section 7.6.
  * @param transition width of the transition band as a fraction of the sample rate
  */
-export function kaiserDesign(attenuationDb: number, transition: number): { beta: number; lengthSamples: number } {
+export function kaiserDesign(
+  attenuationDb: number,
+  transition: number,
+): { beta: number; lengthSamples: number } {
   return {
     beta: 0.1102 * (attenuationDb - 8.7),
     lengthSamples: (attenuationDb - 7.95) / (2.285 * 2 * Math.PI * transition),

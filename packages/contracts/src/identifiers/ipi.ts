@@ -21,13 +21,20 @@ export function ipiCheckDigits(firstNine: string): string {
  * A wrong check is reported in `checkOk`, not refused: many numbers in circulation fail it.
  */
 export function readIpi(input: string): IpiReading {
-  const compact = prepareCode(input).replace(/^IPI[\s:]*/, '').replace(/[\s.-]/g, '')
+  const compact = prepareCode(input)
+    .replace(/^IPI[\s:]*/, '')
+    .replace(/[\s.-]/g, '')
   if (!/^\d{5,11}$/.test(compact)) {
     return { ok: false, message: 'An IPI name number is up to eleven figures, for example 00014107338.' }
   }
   const padded = compact.padStart(11, '0')
-  if (/^0+$/.test(padded)) return { ok: false, message: 'An IPI name number of only zeros identifies nobody.' }
-  return { ok: true, ipi: brandedIpiSchema.parse(padded), checkOk: ipiCheckDigits(padded.slice(0, 9)) === padded.slice(9) }
+  if (/^0+$/.test(padded))
+    return { ok: false, message: 'An IPI name number of only zeros identifies nobody.' }
+  return {
+    ok: true,
+    ipi: brandedIpiSchema.parse(padded),
+    checkOk: ipiCheckDigits(padded.slice(0, 9)) === padded.slice(9),
+  }
 }
 
 /** 000 141 073 38: grouped for reading. */

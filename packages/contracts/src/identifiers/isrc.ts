@@ -18,7 +18,9 @@ export type Isrc = z.infer<typeof brandedIsrcSchema>
  * The label "ISRC", spaces and dashes are not part of the code; it has no check digit, so form is all that can be tested.
  */
 export function readIsrc(input: string): IsrcReading {
-  const compact = prepareCode(input).replace(/^ISRC[\s:]*/, '').replace(/[\s-]/g, '')
+  const compact = prepareCode(input)
+    .replace(/^ISRC[\s:]*/, '')
+    .replace(/[\s-]/g, '')
   if (compact.length !== 12) {
     return { ok: false, message: `An ISRC has 12 characters; this has ${compact.length}.` }
   }

@@ -17,9 +17,14 @@ export function iswcCheckDigit(workDigits: string): number {
 
 /** Reads an International Standard Musical Work Code as typed, with or without separators (ISO 15707). */
 export function readIswc(input: string): IswcReading {
-  const compact = prepareCode(input).replace(/^ISWC[\s:]*/, '').replace(/[\s.-]/g, '')
+  const compact = prepareCode(input)
+    .replace(/^ISWC[\s:]*/, '')
+    .replace(/[\s.-]/g, '')
   if (/^\d{10}$/.test(compact)) {
-    return { ok: false, message: 'An ISWC begins with the letter T; ten figures alone could be another number.' }
+    return {
+      ok: false,
+      message: 'An ISWC begins with the letter T; ten figures alone could be another number.',
+    }
   }
   const parsed = brandedIswcSchema.safeParse(compact)
   if (!parsed.success) {
@@ -27,7 +32,10 @@ export function readIswc(input: string): IswcReading {
   }
   const expected = iswcCheckDigit(compact.slice(1, 10))
   if (Number(compact.slice(10)) !== expected) {
-    return { ok: false, message: `The check digit of this ISWC does not fit: ${compact.slice(10)}, expected ${expected}.` }
+    return {
+      ok: false,
+      message: `The check digit of this ISWC does not fit: ${compact.slice(10)}, expected ${expected}.`,
+    }
   }
   return { ok: true, iswc: parsed.data }
 }
