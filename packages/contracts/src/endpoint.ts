@@ -34,10 +34,10 @@ export function defineEndpoint<const Definition extends Endpoint>(definition: De
 
 export type EndpointParams<E extends Endpoint> = E extends { params: infer Schema extends z.ZodObject }
   ? z.output<Schema>
-  : Record<never, never>
+  : undefined
 export type EndpointQuery<E extends Endpoint> = E extends { query: infer Schema extends z.ZodObject }
   ? z.output<Schema>
-  : Record<never, never>
+  : undefined
 export type EndpointBody<E extends Endpoint> = E extends { body: infer Schema extends z.ZodType }
   ? z.output<Schema>
   : undefined

@@ -64,7 +64,7 @@ export const licenceInputSchema = z
   })
   .refine((licence) => licence.validTo === null || licence.validTo >= licence.validFrom, {
     path: ['validTo'],
-    message: 'The last day is before the first.',
+    error: 'The last day is before the first.',
   })
 
 const stationParams = z.object({ stationId: stationIdSchema })
