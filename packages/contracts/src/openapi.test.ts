@@ -38,7 +38,7 @@ describe('the endpoint registry', () => {
   it('names every path parameter in its schema and no other', () => {
     for (const endpoint of endpoints) {
       const inPath = [...endpoint.path.matchAll(/:([A-Za-z]+)/g)].map((match) => match[1])
-      expect(Object.keys(endpoint.params?.shape ?? {}), endpoint.id).toEqual(inPath)
+      expect([endpoint.id, ...Object.keys(endpoint.params?.shape ?? {})]).toEqual([endpoint.id, ...inPath])
     }
   })
 })
