@@ -22,7 +22,14 @@ export default defineConfig({
       {
         root: import.meta.dirname,
         plugins: [react()],
-        test: { name: 'web', environment: 'jsdom', include: ['apps/web/src/**/*.test.{ts,tsx}'] },
+        test: {
+          name: 'web',
+          environment: 'jsdom',
+          include: ['apps/web/src/**/*.test.{ts,tsx}'],
+          setupFiles: ['apps/web/src/testing/setup.ts'],
+          // Stylesheets are left out of component tests, except the one whose colours are measured.
+          css: { include: [/theme\.css/] },
+        },
       },
       {
         root: import.meta.dirname,

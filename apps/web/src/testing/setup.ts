@@ -1,0 +1,37 @@
+import '@testing-library/jest-dom/vitest'
+import { cleanup } from '@testing-library/react'
+import { afterEach, vi } from 'vitest'
+
+// jsdom draws nothing, measures nothing and has no dialogs: these are the pieces components rely on.
+HTMLCanvasElement.prototype.getContext = () => null
+HTMLDialogElement.prototype.showModal = function showModal() {
+  this.open = true
+}
+HTMLDialogElement.prototype.close = function close() {
+  this.open = false
+  this.dispatchEvent(new Event('close'))
+}
+
+class StillObserver implements ResizeObserver {
+  observe(): void {
+    // Nothing changes its size in jsdom.
+  }
+  unobserve(): void {
+    // Nothing was observed.
+  }
+  disconnect(): void {
+    // Nothing was observed.
+  }
+}
+vi.stubGlobal('ResizeObserver', StillObserver)
+vi.stubGlobal('matchMedia', (query: string) => ({
+  matches: false,
+  media: query,
+  addEventListener: () => undefined,
+  removeEventListener: () => undefined,
+}))
+
+afterEach(() => {
+  cleanup()
+  localStorage.clear()
+})
