@@ -36,7 +36,9 @@ function refusal(statement: string): Promise<string> {
   return database.raw(statement).then(
     () => 'accepted',
     (error: unknown) =>
-      error instanceof Error && 'constraint' in error ? String(error.constraint) : String(error),
+      error instanceof Error && 'constraint' in error && error.constraint !== undefined
+        ? String(error.constraint)
+        : String(error),
   )
 }
 
