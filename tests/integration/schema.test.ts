@@ -1,9 +1,12 @@
 import { createDatabase, type Database } from '@fieldfare/database'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { z } from 'zod'
 import { createTestDatabase } from '../support/index.ts'
 
 /** The guards that hold even when the code above them is wrong. */
 let database: Database
+
+const namedErrorSchema = z.object({ constraint: z.string() })
 
 const ids = {
   clerk: '00000000-0000-4000-8000-000000000001',
@@ -32,13 +35,11 @@ beforeAll(async () => {
 
 afterAll(() => database.destroy())
 
+/** The name of the constraint that refused a statement, or the complaint where there is no name. */
 function refusal(statement: string): Promise<string> {
   return database.raw(statement).then(
     () => 'accepted',
-    (error: unknown) =>
-      error instanceof Error && 'constraint' in error && error.constraint !== undefined
-        ? String(error.constraint)
-        : String(error),
+    (error: unknown) => namedErrorSchema.safeParse(error).data?.constraint ?? String(error),
   )
 }
 
