@@ -72,7 +72,7 @@ export default defineConfig(
     rules: { ...strictness, ...lessNoise },
   },
   {
-    files: ['*.{js,cjs,ts}', 'apps/web/src/**/routes/**/*.tsx'],
+    files: ['*.{js,cjs,ts}', '**/vite.config.ts', 'apps/web/src/**/routes/**/*.tsx'],
     languageOptions: { globals: globals.node },
     rules: { 'no-restricted-syntax': 'off' },
   },

@@ -1,6 +1,6 @@
 import { createHash } from 'node:crypto'
 import { readdir, readFile, rename, rm, writeFile } from 'node:fs/promises'
-import { join, relative } from 'node:path'
+import { join } from 'node:path'
 
 import { LaunchError } from './launch-error.ts'
 import { CommandError, runCommand } from './run-command.ts'
@@ -15,7 +15,8 @@ export type WebBuildOptions = {
   readonly onBuild?: () => void
 }
 
-const SOURCES = ['apps/web', 'packages/contracts', 'vite.config.ts', 'tsconfig.json', 'package-lock.json']
+const SOURCE_DIRECTORIES = ['apps/web', 'packages/contracts']
+const SOURCE_FILES = ['vite.config.ts', 'tsconfig.json', 'package-lock.json']
 const NOT_SOURCES = /(^|\/)(node_modules|dist|coverage)(\/|$)|\.test\.tsx?$/
 
 /** Builds the web application unless the last build was made from the very same sources. */
@@ -66,22 +67,24 @@ async function isThere(outputDirectory: string): Promise<boolean> {
 
 async function hashSources(repository: string): Promise<string> {
   const hash = createHash('sha256')
-  for (const source of SOURCES) {
-    for (const file of await listFiles(join(repository, source))) {
-      if (NOT_SOURCES.test(relative(repository, file))) continue
-      hash.update(`${relative(repository, file)}\0`)
-      hash.update(await readFile(file))
-    }
+  const listed = SOURCE_DIRECTORIES.map((directory) => listFiles(repository, directory))
+  for (const file of [...SOURCE_FILES, ...(await Promise.all(listed)).flat()]) {
+    if (NOT_SOURCES.test(file)) continue
+    hash.update(`${file}\0`)
+    // A file that is missing, or goes while an editor saves it, counts as empty.
+    hash.update(await readFile(join(repository, file)).catch(() => ''))
   }
   return hash.digest('hex')
 }
 
-async function listFiles(path: string): Promise<readonly string[]> {
-  const entries = await readdir(path, { withFileTypes: true }).catch(() => undefined)
-  if (entries === undefined) return [path]
+async function listFiles(repository: string, directory: string): Promise<readonly string[]> {
+  const entries = await readdir(join(repository, directory), { withFileTypes: true }).catch(() => [])
   const inside = entries
     .filter((entry) => entry.name !== 'node_modules')
     .sort((first, second) => (first.name < second.name ? -1 : 1))
-    .map((entry) => listFiles(join(path, entry.name)))
+    .map(async (entry) => {
+      const path = `${directory}/${entry.name}`
+      return entry.isDirectory() ? listFiles(repository, path) : [path]
+    })
   return (await Promise.all(inside)).flat()
 }
