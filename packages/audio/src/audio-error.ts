@@ -9,6 +9,7 @@ export type AudioErrorCode =
   | 'no-samples'
   | 'too-long'
   | 'decoder-missing'
+  | 'encoding-failed'
 
 /**
  * A recording that cannot be used. `userMessage` is written for the person who sent the file: what is wrong with it
@@ -67,5 +68,14 @@ export function decoderMissing(program: string): AudioError {
   return new AudioError(
     'decoder-missing',
     `This kind of audio needs the program ${program}, which is not installed on the server. Please tell the administrator.`,
+  )
+}
+
+export function encodingFailed(detail: string, options?: ErrorOptions): AudioError {
+  return new AudioError(
+    'encoding-failed',
+    'The audio could not be written on the server. Please try again; if it happens again, tell the administrator.',
+    detail,
+    options,
   )
 }

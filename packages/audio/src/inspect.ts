@@ -123,7 +123,18 @@ async function inspectWave(source: ByteSource) {
   }
 }
 
-const PROBE_ARGUMENTS = ['-v', 'error', '-of', 'json', '-select_streams', 'a:0']
+const PROBE_ARGUMENTS = [
+  '-v',
+  'error',
+  '-protocol_whitelist',
+  'file',
+  '-f',
+  'mov',
+  '-of',
+  'json',
+  '-select_streams',
+  'a:0',
+]
 const PROBE_ENTRIES = 'stream=codec_name,channels,sample_rate,duration:format=duration'
 
 function field(value: unknown, name: string): unknown {
@@ -163,7 +174,8 @@ async function inspectWithFfprobe(path: string) {
     channels: Number(field(stream, 'channels')),
     sampleRateHz: Number(field(stream, 'sample_rate')),
     durationSeconds: Number.isFinite(durationSeconds) ? durationSeconds : 0,
-    isDurationExact: false,
+    // The table of samples counts them all.
+    isDurationExact: durationSeconds > 0,
   }
 }
 

@@ -3,7 +3,7 @@ import type { AudioFormat } from '../formats/audio-format.ts'
 import { openByteSource, type ByteSource } from '../formats/bytes.ts'
 import { inspectAudio, type Inspection } from '../inspect.ts'
 import { createResampler, type Resampler } from '../resample/resampler.ts'
-import { decodeWithFfmpeg, type FfmpegOutcome } from './ffmpeg-decoder.ts'
+import { decodeWithFfmpeg, findFfmpeg, type FfmpegOutcome } from './ffmpeg-decoder.ts'
 import { canStreamWithPackage, decodeWithPackage } from './packaged-decoder.ts'
 import type { PcmBlock } from './pcm-source.ts'
 
@@ -13,6 +13,8 @@ export type DecodeOptions = {
   readonly signal?: AbortSignal
   /** Longer recordings are refused with `too-long`; default seven days. */
   readonly maximumDurationMs?: number
+  /** Normally left out: ffmpeg where it is installed, else the package, which cannot read M4A, AAC and MP2. */
+  readonly decoder?: 'audio-decode' | 'ffmpeg'
 }
 
 /** What is known once a recording was read to its end. */
@@ -73,22 +75,18 @@ async function* resampled(
   yield* adapter.finish()
 }
 
-/** Leaves out the first samples: what another decoder already gave before it failed. */
-async function* skipSamples(
-  blocks: AsyncIterable<Float32Array>,
-  count: number,
-): AsyncGenerator<Float32Array, void, undefined> {
-  let left = count
-  for await (const block of blocks) {
-    const skipped = Math.min(left, block.length)
-    left -= skipped
-    if (skipped < block.length) yield skipped === 0 ? block : block.subarray(skipped)
-  }
-}
-
 type Progress = { samples: number; peak: number; decoder: DecodeSummary['decoder']; problem: string | null }
 
-/** Decodes with the package where it can stream, and carries on with ffmpeg where the package gives up. */
+/** ffmpeg is several times faster and works beside us; the package needs nothing installed. */
+async function chooseDecoder(
+  source: ByteSource,
+  inspection: Inspection,
+  wanted: DecodeOptions['decoder'],
+): Promise<DecodeSummary['decoder']> {
+  if (!canStreamWithPackage(source, inspection)) return 'ffmpeg'
+  return wanted ?? ((await findFfmpeg()) ? 'ffmpeg' : 'audio-decode')
+}
+
 async function* decodeBlocks(
   path: string,
   source: ByteSource,
@@ -97,33 +95,21 @@ async function* decodeBlocks(
   progress: Progress,
 ): AsyncGenerator<Float32Array, void, undefined> {
   const { sampleRateHz, signal } = options
-  let given = 0
-  if (canStreamWithPackage(source, inspection)) {
-    const blocks = resampled(decodeWithPackage(source, inspection), sampleRateHz)
-    try {
-      for (;;) {
-        const next = await blocks.next()
-        if (next.done) return
-        given += next.value.length
-        yield next.value
-      }
-    } catch (error) {
-      progress.problem = `audio-decode: ${String(error)}`
-    } finally {
-      await blocks.return()
-    }
-  }
-  progress.decoder = 'ffmpeg'
+  progress.decoder = await chooseDecoder(source, inspection, options.decoder)
   const outcome: FfmpegOutcome = { problem: null }
-  const blocks = resampled(decodeWithFfmpeg(path, sampleRateHz, outcome, signal), sampleRateHz)
+  const input = { path, formatId: inspection.format.id, startOffset: inspection.startOffset }
+  const blocks =
+    progress.decoder === 'ffmpeg'
+      ? decodeWithFfmpeg(input, sampleRateHz, outcome, signal)
+      : decodeWithPackage(source, inspection)
   try {
-    yield* given === 0 ? blocks : skipSamples(blocks, given)
-    progress.problem = outcome.problem ?? progress.problem
+    yield* resampled(blocks, sampleRateHz)
+    progress.problem = outcome.problem
   } catch (error) {
     signal?.throwIfAborted()
     // What was decoded before counts; only a file that gave nothing is refused.
-    if (given === 0) throw error instanceof AudioError ? error : undecodable(String(error))
-    progress.problem = `${progress.problem ?? ''}; ${String(error)}`
+    if (progress.samples === 0) throw error instanceof AudioError ? error : undecodable(String(error))
+    progress.problem = String(error)
   }
 }
 
