@@ -8,11 +8,14 @@ export async function up(knex: Knex): Promise<void> {
       valid_from date not null,
       minimum_ms bigint not null,
       cap_ms bigint,
+      -- How long after the issue a statement may be questioned.
+      question_days smallint not null default 90,
       created_at timestamptz not null default now(),
       constraint distribution_rules_pkey primary key (version),
       constraint distribution_rules_valid_from_key unique (valid_from),
       constraint distribution_rules_minimum_check check (minimum_ms >= 0),
-      constraint distribution_rules_cap_check check (cap_ms >= greatest(minimum_ms, 1))
+      constraint distribution_rules_cap_check check (cap_ms >= greatest(minimum_ms, 1)),
+      constraint distribution_rules_question_check check (question_days > 0)
     );
 
     create table deduction_rules (
@@ -209,6 +212,21 @@ export async function up(knex: Knex): Promise<void> {
     );
     create index statements_party_idx on statements (party_id);
 
+    create table statement_stations (
+      statement_id uuid not null,
+      station_id uuid not null,
+      gross_minor bigint not null,
+      deductions_minor bigint not null,
+      net_minor bigint not null,
+      held_ms bigint not null,
+      expected_ms bigint not null,
+      constraint statement_stations_pkey primary key (statement_id, station_id),
+      constraint statement_stations_statement_fkey foreign key (statement_id) references statements (id),
+      constraint statement_stations_station_fkey foreign key (station_id) references stations (id),
+      constraint statement_stations_closed_check check (gross_minor = deductions_minor + net_minor)
+    );
+    create index statement_stations_station_idx on statement_stations (station_id);
+
     create table statement_deductions (
       statement_id uuid not null,
       position smallint not null,
@@ -288,7 +306,7 @@ export async function up(knex: Knex): Promise<void> {
     begin
       foreach append_only in array array[
         'distribution_stations', 'distribution_deductions', 'distribution_pools', 'distribution_holdbacks',
-        'statements', 'statement_deductions', 'statement_holdbacks', 'statement_lines', 'statement_line_plays',
+        'statements', 'statement_stations', 'statement_deductions', 'statement_holdbacks', 'statement_lines', 'statement_line_plays',
         'statement_files', 'distribution_rules', 'deduction_rules'
       ] loop
         execute format('create trigger %I before update or delete on %I for each row execute function refuse_change()',
@@ -349,7 +367,7 @@ export async function up(knex: Knex): Promise<void> {
 export async function down(knex: Knex): Promise<void> {
   await knex.raw(`
     drop table dispute_messages, disputes, statement_files, statement_line_plays, statement_lines,
-      statement_holdbacks, statement_deductions, statements, distribution_holdbacks, distribution_pools,
+      statement_holdbacks, statement_deductions, statement_stations, statements, distribution_holdbacks, distribution_pools,
       distribution_deductions, distribution_stations, distributions, distribution_months, deduction_rules,
       distribution_rules;
     drop trigger plays_month_open on plays;
