@@ -47,11 +47,16 @@ export function findFfmpeg(): Promise<{ hasSoxr: boolean } | null> {
   return installed
 }
 
-function argumentsFor({ path, formatId, startOffset }: FfmpegInput, sampleRateHz: number, hasSoxr: boolean) {
+/** Opens a recording as what it is, local files only, and past its tags. Other input options go before. */
+export function demuxerArguments({ path, formatId, startOffset }: FfmpegInput): string[] {
   const skip = startOffset > 0 ? ['-skip_initial_bytes', `${startOffset}`] : []
+  return ['-protocol_whitelist', 'file,pipe', '-f', DEMUXERS[formatId], ...skip, '-i', `file:${path}`]
+}
+
+function argumentsFor(input: FfmpegInput, sampleRateHz: number, hasSoxr: boolean): string[] {
   return [
-    ...['-nostdin', '-hide_banner', '-v', 'error', '-protocol_whitelist', 'file,pipe'],
-    ...['-f', DEMUXERS[formatId], ...skip, '-i', `file:${path}`, '-map', '0:a:0', '-vn', '-sn', '-dn'],
+    ...['-nostdin', '-hide_banner', '-v', 'error', ...demuxerArguments(input)],
+    ...['-map', '0:a:0', '-vn', '-sn', '-dn'],
     // Float output is not kept below full scale by default; the same level as our own mix is wanted.
     ...['-ac', '1', '-ar', `${sampleRateHz}`, '-rematrix_maxval', '1'],
     ...(hasSoxr ? PRECISE_RESAMPLER : OWN_RESAMPLER),

@@ -33,3 +33,15 @@ export function toPcm16(samples: Float32Array): Uint8Array {
   }
   return bytes
 }
+
+/** Reads a plain mono 16-bit WAV held in memory whose sizes may not be filled in, as programs write to a pipe. */
+export function fromPcm16Wave(bytes: Uint8Array): { samples: Float32Array; sampleRateHz: number } {
+  const view = viewOf(bytes)
+  if (bytes.length < WAVE_HEADER_BYTES) return { samples: new Float32Array(0), sampleRateHz: 22_050 }
+  const count = Math.floor((bytes.length - WAVE_HEADER_BYTES) / BYTES_PER_SAMPLE)
+  const samples = new Float32Array(count)
+  for (let i = 0; i < count; i++) {
+    samples[i] = view.getInt16(WAVE_HEADER_BYTES + i * BYTES_PER_SAMPLE, true) / 32_768
+  }
+  return { samples, sampleRateHz: view.getUint32(24, true) }
+}

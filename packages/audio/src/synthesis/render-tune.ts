@@ -1,3 +1,4 @@
+import { bendPeak } from './bend-peak.ts'
 import { createRandom } from './random.ts'
 import { renderDrum } from './render-drum.ts'
 import { renderNote } from './render-note.ts'
@@ -5,9 +6,6 @@ import { pitchToHz, type Drum, type Note, type Tune } from './tune.ts'
 
 /** Loudness the finished tune is brought to, RMS below full scale. */
 const TARGET_RMS = 10 ** (-18 / 20)
-/** From here on peaks are bent, and they never reach {@link LARGEST_PEAK}. */
-const BEND_FROM = 0.55
-const LARGEST_PEAK = 0.92
 /** Removes what cannot be heard, a constant offset above all. */
 const LOW_CUT_HZ = 25
 const FINAL_FADE_SECONDS = 0.5
@@ -74,13 +72,9 @@ function level(sampleRateHz: number, samples: Float32Array): void {
   for (let i = 0; i < samples.length; i++) sum += (samples[i] ?? 0) ** 2
   const rms = Math.sqrt(sum / Math.max(1, samples.length))
   const gain = rms > 0 ? TARGET_RMS / rms : 0
-  const room = LARGEST_PEAK - BEND_FROM
   const fade = Math.round(FINAL_FADE_SECONDS * sampleRateHz)
   for (let i = 0; i < samples.length; i++) {
-    const value = gain * (samples[i] ?? 0)
-    const excess = Math.abs(value) - BEND_FROM
-    const bent = excess > 0 ? Math.sign(value) * (BEND_FROM + room * Math.tanh(excess / room)) : value
-    samples[i] = bent * Math.min(1, (samples.length - i) / fade)
+    samples[i] = bendPeak(gain * (samples[i] ?? 0)) * Math.min(1, (samples.length - i) / fade)
   }
 }
 
