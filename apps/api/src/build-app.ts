@@ -1,0 +1,35 @@
+import cookieParser from 'cookie-parser'
+import express, { type Express, type Router } from 'express'
+import { createAuthRouter } from './features/auth/auth.router.ts'
+import { createHealthRouter } from './features/health/health.router.ts'
+import type { Dependencies } from './http/dependencies.ts'
+import { requestContext } from './http/request-context.ts'
+import { provideContext } from './middleware/context.ts'
+import { refuseUnknownAddress } from './middleware/no-such-address.ts'
+import { answerProblem } from './middleware/problem.ts'
+import { requestLog } from './middleware/request-log.ts'
+import { securityHeaders } from './middleware/security-headers.ts'
+import { serveWebApplication } from './middleware/web-application.ts'
+
+/** Every feature of the API; a new one is added here and nowhere else. */
+const features: readonly ((dependencies: Dependencies) => Router)[] = [createHealthRouter, createAuthRouter]
+
+/** Puts the application together. It neither listens nor connects: `server.ts` does. */
+export function buildApp(dependencies: Dependencies): Express {
+  const { configuration, logger } = dependencies
+  const app = express()
+  app.disable('x-powered-by')
+  app.disable('etag')
+  // Only a proxy on this machine may tell whose request it passes on.
+  app.set('trust proxy', 'loopback')
+  app.use(securityHeaders(configuration.publicUrl))
+  app.use(provideContext(dependencies))
+  app.use(requestLog(logger, (request) => requestContext(request).correlationId))
+  app.use(cookieParser())
+  for (const createFeature of features) app.use(createFeature(dependencies))
+  app.use('/api', express.Router().use(refuseUnknownAddress))
+  if (configuration.webDirectory !== null) app.use(serveWebApplication(configuration.webDirectory))
+  app.use(refuseUnknownAddress)
+  app.use(answerProblem)
+  return app
+}

@@ -1,0 +1,1 @@
+export { startApi, type RunningApi } from './server.ts'
