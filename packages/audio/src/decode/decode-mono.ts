@@ -77,14 +77,15 @@ async function* resampled(
 
 type Progress = { samples: number; peak: number; decoder: DecodeSummary['decoder']; problem: string | null }
 
-/** ffmpeg is several times faster and works beside us; the package needs nothing installed. */
-async function chooseDecoder(
+/** ffmpeg is several times faster and works beside us; the package needs nothing installed and reads what ffmpeg refuses. */
+async function chooseDecoders(
   source: ByteSource,
   inspection: Inspection,
   wanted: DecodeOptions['decoder'],
-): Promise<DecodeSummary['decoder']> {
-  if (!canStreamWithPackage(source, inspection)) return 'ffmpeg'
-  return wanted ?? ((await findFfmpeg()) ? 'ffmpeg' : 'audio-decode')
+): Promise<DecodeSummary['decoder'][]> {
+  if (!canStreamWithPackage(source, inspection)) return ['ffmpeg']
+  if (wanted) return [wanted]
+  return (await findFfmpeg()) ? ['ffmpeg', 'audio-decode'] : ['audio-decode']
 }
 
 async function* decodeBlocks(
@@ -95,22 +96,27 @@ async function* decodeBlocks(
   progress: Progress,
 ): AsyncGenerator<Float32Array, void, undefined> {
   const { sampleRateHz, signal } = options
-  progress.decoder = await chooseDecoder(source, inspection, options.decoder)
-  const outcome: FfmpegOutcome = { problem: null }
-  const input = { path, formatId: inspection.format.id, startOffset: inspection.startOffset }
-  const blocks =
-    progress.decoder === 'ffmpeg'
-      ? decodeWithFfmpeg(input, sampleRateHz, outcome, signal)
-      : decodeWithPackage(source, inspection)
-  try {
-    yield* resampled(blocks, sampleRateHz)
-    progress.problem = outcome.problem
-  } catch (error) {
-    signal?.throwIfAborted()
-    // What was decoded before counts; only a file that gave nothing is refused.
-    if (progress.samples === 0) throw error instanceof AudioError ? error : undecodable(String(error))
-    progress.problem = String(error)
+  let firstError: unknown = null
+  for (const decoder of await chooseDecoders(source, inspection, options.decoder)) {
+    progress.decoder = decoder
+    const outcome: FfmpegOutcome = { problem: null }
+    const input = { path, formatId: inspection.format.id, startOffset: inspection.startOffset }
+    const blocks =
+      decoder === 'ffmpeg'
+        ? decodeWithFfmpeg(input, sampleRateHz, outcome, signal)
+        : decodeWithPackage(source, inspection)
+    try {
+      yield* resampled(blocks, sampleRateHz)
+      progress.problem = outcome.problem
+    } catch (error) {
+      signal?.throwIfAborted()
+      firstError ??= error
+      progress.problem = String(error)
+    }
+    // What was decoded counts; only a recording that gave nothing is tried again and at last refused.
+    if (progress.samples > 0) return
   }
+  if (firstError) throw firstError instanceof AudioError ? firstError : undecodable(String(firstError))
 }
 
 function peakOf(block: Float32Array, peak: number): number {
