@@ -22,7 +22,9 @@ function relativeLuminance(hex: string): number {
 
 /** Contrast ratio, WCAG 2.2 (https://www.w3.org/TR/WCAG22/#dfn-contrast-ratio). */
 function contrastRatio(first: string, second: string): number {
-  const [darker = 0, lighter = 0] = [relativeLuminance(first), relativeLuminance(second)].sort((a, b) => a - b)
+  const [darker = 0, lighter = 0] = [relativeLuminance(first), relativeLuminance(second)].sort(
+    (a, b) => a - b,
+  )
   return (lighter + 0.05) / (darker + 0.05)
 }
 

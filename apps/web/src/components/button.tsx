@@ -23,7 +23,14 @@ export type ButtonProps = Omit<ComponentProps<'button'>, 'className'> & {
   children: ReactNode
 }
 
-export function Button({ tone = 'plain', icon: Icon, busy = false, children, disabled, ...rest }: ButtonProps) {
+export function Button({
+  tone = 'plain',
+  icon: Icon,
+  busy = false,
+  children,
+  disabled,
+  ...rest
+}: ButtonProps) {
   return (
     <button
       type="button"

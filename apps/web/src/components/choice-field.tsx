@@ -10,10 +10,24 @@ export type SelectFieldProps = FieldLook &
     emptyLabel?: string
   }
 
-export function SelectField({ label, hint, error, optional, choices, emptyLabel, ...select }: SelectFieldProps) {
+export function SelectField({
+  label,
+  hint,
+  error,
+  optional,
+  choices,
+  emptyLabel,
+  ...select
+}: SelectFieldProps) {
   const field = useFieldWiring({ label, hint, error, name: select.name })
   return (
-    <FieldShell id={field.wiring.id} label={label} hint={hint} error={field.error} optional={optional === true}>
+    <FieldShell
+      id={field.wiring.id}
+      label={label}
+      hint={hint}
+      error={field.error}
+      optional={optional === true}
+    >
       <select {...select} {...field.wiring} className="field-box">
         {emptyLabel !== undefined && <option value="">{emptyLabel}</option>}
         {choices.map((choice) => (
@@ -35,7 +49,12 @@ export function CheckboxField({ label, hint, error, optional: _, ...input }: Che
   return (
     <div className="grid gap-1">
       <div className="flex items-start gap-2.5">
-        <input {...input} {...field.wiring} type="checkbox" className="mt-1 size-4.5 shrink-0 accent-action" />
+        <input
+          {...input}
+          {...field.wiring}
+          type="checkbox"
+          className="mt-1 size-4.5 shrink-0 accent-action"
+        />
         <label htmlFor={id}>{label}</label>
       </div>
       {hint !== undefined && (

@@ -1,6 +1,5 @@
 import {
   columnVisibilityFeature,
-  createColumnHelper,
   rowSelectionFeature,
   rowSortingFeature,
   tableFeatures,
@@ -11,7 +10,11 @@ import {
 import type { ReactNode } from 'react'
 
 /** The table features in use; paging and filtering are the server's, so their row models are left out. */
-export const dataTableFeatures = tableFeatures({ columnVisibilityFeature, rowSelectionFeature, rowSortingFeature })
+export const dataTableFeatures = tableFeatures({
+  columnVisibilityFeature,
+  rowSelectionFeature,
+  rowSortingFeature,
+})
 export type DataTableFeatures = typeof dataTableFeatures
 
 export type DataColumn<Row> = {
@@ -36,16 +39,13 @@ export type DataColumn<Row> = {
 export function columnDefinitions<Row extends RowData>(
   columns: readonly DataColumn<Row>[],
 ): ColumnDef<DataTableFeatures, Row>[] {
-  const helper = createColumnHelper<DataTableFeatures, Row>()
-  return columns.map((column) =>
-    helper.accessor((row) => row, {
-      id: column.id,
-      header: column.header,
-      enableSorting: column.sortable === true,
-      enableHiding: column.fixed !== true && column.rowHeader !== true,
-      cell: ({ row }) => column.cell(row.original),
-    }),
-  )
+  return columns.map((column) => ({
+    id: column.id,
+    header: column.header,
+    accessorFn: (row): unknown => row,
+    enableSorting: column.sortable === true,
+    enableHiding: column.fixed !== true && column.rowHeader !== true,
+  }))
 }
 
 /** '-startedAt' in the address is the column startedAt, descending. */

@@ -10,7 +10,7 @@ export function DefinitionList({ items }: { items: readonly (Definition | null)[
         item === null ? null : (
           // The order of the facts of a thing never changes while it is shown.
           <Fragment key={index}>
-            <dt className="overline-label border-hairline pt-2 sm:border-t sm:py-2 sm:pr-6">{item.term}</dt>
+            <dt className="border-hairline pt-2 overline-label sm:border-t sm:py-2 sm:pr-6">{item.term}</dt>
             <dd className="min-w-0 border-b border-hairline pb-2 break-words sm:border-t sm:border-b-0 sm:py-2">
               {item.value}
             </dd>
@@ -28,7 +28,10 @@ export function KeyFigures({ items }: { items: readonly KeyFigure[] }) {
   return (
     <dl className="grid grid-cols-2 border-y border-ink sm:flex sm:flex-wrap">
       {items.map((item) => (
-        <div key={item.label} className="grow border-hairline px-4 py-3 not-first:border-l max-sm:nth-[odd]:border-l-0">
+        <div
+          key={item.label}
+          className="grow border-hairline px-4 py-3 not-first:border-l max-sm:nth-[odd]:border-l-0"
+        >
           <dt className="overline-label">{item.label}</dt>
           <dd className="mt-0.5 text-2xl leading-tight">{item.value}</dd>
           {item.detail !== undefined && <dd className="text-sm text-slate">{item.detail}</dd>}

@@ -20,7 +20,10 @@ export type FieldWiring = {
   'aria-describedby': string | undefined
 }
 
-export function useFieldWiring({ hint, error, name }: FieldLook): { wiring: FieldWiring; error: string | undefined } {
+export function useFieldWiring({ hint, error, name }: FieldLook): {
+  wiring: FieldWiring
+  error: string | undefined
+} {
   const id = useId()
   const errorOf = use(FieldErrorsContext)
   const shownError = error ?? (name === undefined ? undefined : errorOf(name))

@@ -21,7 +21,9 @@ export type PercentProps = ({ ppm: number; ratio?: never } | { ratio: number; pp
 /** A part of a whole, from parts per million or from a ratio of 0 to 1. */
 export function Percent({ ppm, ratio, decimals }: PercentProps) {
   return (
-    <span className="figures">{ppm === undefined ? formatRatio(ratio, decimals) : formatPpm(ppm, decimals)}</span>
+    <span className="figures">
+      {ppm === undefined ? formatRatio(ratio, decimals) : formatPpm(ppm, decimals)}
+    </span>
   )
 }
 

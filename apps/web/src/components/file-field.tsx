@@ -42,7 +42,14 @@ export function FileField({
   }
 
   return (
-    <FieldShell id={field.wiring.id} label={label} hint={hint} error={field.error} optional={optional === true}>
+    <FieldShell
+      id={field.wiring.id}
+      label={label}
+      hint={hint}
+      error={field.error}
+      optional={optional === true}
+    >
+      {/* eslint-disable-next-line jsx-a11y/no-static-element-interactions -- dropping is a shortcut; the button does the same */}
       <div
         onDragOver={(event) => {
           event.preventDefault()

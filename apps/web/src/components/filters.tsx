@@ -28,7 +28,12 @@ type FilterProps = { label: string; value: string; onChange: (value: string) => 
 const TYPING_PAUSE_MS = 300
 
 /** Free text; asks the server once typing pauses. */
-export function SearchFilter({ label, value, onChange, placeholder }: FilterProps & { placeholder?: string }) {
+export function SearchFilter({
+  label,
+  value,
+  onChange,
+  placeholder,
+}: FilterProps & { placeholder?: string }) {
   const id = useId()
   const [draft, setDraft] = useState(value)
   const [shownValue, setShownValue] = useState(value)
@@ -79,7 +84,12 @@ export function SelectFilter({
       <label htmlFor={id} className="overline-label">
         {label}
       </label>
-      <select id={id} value={value} onChange={(event) => onChange(event.currentTarget.value)} className="field-box">
+      <select
+        id={id}
+        value={value}
+        onChange={(event) => onChange(event.currentTarget.value)}
+        className="field-box"
+      >
         <option value="">{allLabel}</option>
         {choices.map((choice) => (
           <option key={choice.value} value={choice.value}>

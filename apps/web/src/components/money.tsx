@@ -15,7 +15,11 @@ export type MoneyProps = {
 export function Money({ amountMinor, currency, currencyDigits, signed = false }: MoneyProps) {
   const society = useSociety()
   const code = currency ?? society?.currency ?? 'XXX'
-  const { sign, symbol, figures } = moneyParts(amountMinor, code, currencyDigits ?? society?.currencyDigits ?? 2)
+  const { sign, symbol, figures } = moneyParts(
+    amountMinor,
+    code,
+    currencyDigits ?? society?.currencyDigits ?? 2,
+  )
   return (
     <span className={classNames('figures', signed && sign !== '' && 'text-bad')}>
       {sign}

@@ -44,7 +44,7 @@ export function Pagination({ page, pageSize, total, onPageChange, onPageSizeChan
         <Button icon={ChevronLeft} disabled={page <= 1} onClick={() => onPageChange(page - 1)}>
           Previous page
         </Button>
-        <span className="figures px-1">
+        <span className="px-1 figures">
           {formatCount(page)} / {formatCount(lastPage)}
         </span>
         <Button icon={ChevronRight} disabled={page >= lastPage} onClick={() => onPageChange(page + 1)}>

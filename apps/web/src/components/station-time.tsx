@@ -31,7 +31,9 @@ export function StationTime({
   return (
     <time dateTime={instant} title={`${utcText(instant)} · ${timeZone}`} className="figures">
       {text}
-      {withZone && precision !== 'day' && <span className="text-slate"> {formatZone(instant, timeZone)}</span>}
+      {withZone && precision !== 'day' && (
+        <span className="text-slate"> {formatZone(instant, timeZone)}</span>
+      )}
       {withUtc && <span className="block text-slate">{utcText(instant)}</span>}
     </time>
   )

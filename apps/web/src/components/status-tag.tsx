@@ -1,4 +1,11 @@
-import { CircleAlert, CircleCheck, CircleDashed, CircleDot, TriangleAlert, type LucideIcon } from 'lucide-react'
+import {
+  CircleAlert,
+  CircleCheck,
+  CircleDashed,
+  CircleDot,
+  TriangleAlert,
+  type LucideIcon,
+} from 'lucide-react'
 import type { ReactNode } from 'react'
 import { classNames } from '../lib/class-names.ts'
 
@@ -19,7 +26,9 @@ export function StatusTag({ tone, icon, children }: StatusTagProps) {
   const look = looks[tone]
   const Icon = icon ?? look.icon
   return (
-    <span className={classNames('inline-flex items-center gap-1.5 font-semibold whitespace-nowrap', look.ink)}>
+    <span
+      className={classNames('inline-flex items-center gap-1.5 font-semibold whitespace-nowrap', look.ink)}
+    >
       <Icon aria-hidden className="size-4 shrink-0" />
       {children}
     </span>

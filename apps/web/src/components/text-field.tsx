@@ -11,8 +11,19 @@ export type TextFieldProps = FieldLook &
 export function TextField({ label, hint, error, optional, code = false, ...input }: TextFieldProps) {
   const field = useFieldWiring({ label, hint, error, name: input.name })
   return (
-    <FieldShell id={field.wiring.id} label={label} hint={hint} error={field.error} optional={optional === true}>
-      <input type="text" {...input} {...field.wiring} className={classNames('field-box', code && 'font-mono')} />
+    <FieldShell
+      id={field.wiring.id}
+      label={label}
+      hint={hint}
+      error={field.error}
+      optional={optional === true}
+    >
+      <input
+        type="text"
+        {...input}
+        {...field.wiring}
+        className={classNames('field-box', code && 'font-mono')}
+      />
     </FieldShell>
   )
 }
@@ -36,7 +47,13 @@ export function DateTimeField({
 }: DateTimeFieldProps) {
   const field = useFieldWiring({ label, hint, error, name: input.name })
   return (
-    <FieldShell id={field.wiring.id} label={label} hint={hint} error={field.error} optional={optional === true}>
+    <FieldShell
+      id={field.wiring.id}
+      label={label}
+      hint={hint}
+      error={field.error}
+      optional={optional === true}
+    >
       <div className="flex flex-wrap items-center gap-x-3 gap-y-1">
         <input {...input} {...field.wiring} type={kind} className="field-box max-w-64 font-mono" />
         {timeZone !== undefined && <span className="text-sm text-slate">Time zone {timeZone}</span>}
@@ -50,7 +67,13 @@ export type TextAreaFieldProps = FieldLook & Omit<ComponentProps<'textarea'>, 'c
 export function TextAreaField({ label, hint, error, optional, rows = 4, ...input }: TextAreaFieldProps) {
   const field = useFieldWiring({ label, hint, error, name: input.name })
   return (
-    <FieldShell id={field.wiring.id} label={label} hint={hint} error={field.error} optional={optional === true}>
+    <FieldShell
+      id={field.wiring.id}
+      label={label}
+      hint={hint}
+      error={field.error}
+      optional={optional === true}
+    >
       <textarea rows={rows} {...input} {...field.wiring} className="field-box" />
     </FieldShell>
   )

@@ -15,7 +15,7 @@ type LooseCall = LooseAddress & { body?: unknown; signal?: AbortSignal }
 
 /** The options may be left out where the endpoint needs none. */
 export type CallArguments<E extends Endpoint> =
-  Record<never, never> extends CallOptions<E> ? [options?: CallOptions<E>] : [options: CallOptions<E>]
+  object extends CallOptions<E> ? [options?: CallOptions<E>] : [options: CallOptions<E>]
 
 /**
  * Calls an endpoint and gives its parsed answer. Renews the session once when it has run out.

@@ -17,7 +17,11 @@ export function formatLocalDate(instant: string, timeZone: string): string {
 }
 
 /** Wall-clock time in a zone, 24 hours. */
-export function formatClock(instant: string | number, timeZone: string, precision: 'minute' | 'second'): string {
+export function formatClock(
+  instant: string | number,
+  timeZone: string,
+  precision: 'minute' | 'second',
+): string {
   const options: Intl.DateTimeFormatOptions = {
     hour: '2-digit',
     minute: '2-digit',
@@ -30,7 +34,9 @@ export function formatClock(instant: string | number, timeZone: string, precisio
 
 /** Short zone name at that moment: CET, WEST or GMT-3. */
 export function formatZone(instant: string, timeZone: string): string {
-  const parts = formatterFor(`zone ${timeZone}`, { timeZone, timeZoneName: 'short' }).formatToParts(new Date(instant))
+  const parts = formatterFor(`zone ${timeZone}`, { timeZone, timeZoneName: 'short' }).formatToParts(
+    new Date(instant),
+  )
   return parts.find((part) => part.type === 'timeZoneName')?.value ?? timeZone
 }
 
@@ -61,7 +67,11 @@ export function shiftMonth(month: string, count: number): string {
 
 /** The current month in a zone. */
 export function currentMonth(timeZone: string, now = new Date()): string {
-  const parts = formatterFor(`month ${timeZone}`, { year: 'numeric', month: '2-digit', timeZone }).formatToParts(now)
+  const parts = formatterFor(`month ${timeZone}`, {
+    year: 'numeric',
+    month: '2-digit',
+    timeZone,
+  }).formatToParts(now)
   const part = (type: string) => parts.find((candidate) => candidate.type === type)?.value ?? ''
   return `${part('year')}-${part('month')}`
 }

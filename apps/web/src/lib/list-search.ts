@@ -33,7 +33,10 @@ function readWhole(text: string | null, fallback: number, maximum: number): numb
   return text !== null && Number.isInteger(value) && value >= 1 && value <= maximum ? value : fallback
 }
 
-function recordOf<Name extends string>(names: readonly Name[], valueOf: (name: Name) => string): Record<Name, string>
+function recordOf<Name extends string>(
+  names: readonly Name[],
+  valueOf: (name: Name) => string,
+): Record<Name, string>
 function recordOf(names: readonly string[], valueOf: (name: string) => string): Record<string, string> {
   return Object.fromEntries(names.map((name) => [name, valueOf(name)]))
 }

@@ -1,7 +1,11 @@
 import { useState } from 'react'
 import type { z } from 'zod'
 
-function read<Schema extends z.ZodType>(key: string, schema: Schema, fallback: z.output<Schema>): z.output<Schema> {
+function read<Schema extends z.ZodType>(
+  key: string,
+  schema: Schema,
+  fallback: z.output<Schema>,
+): z.output<Schema> {
   const text = localStorage.getItem(key)
   if (text === null) return fallback
   try {

@@ -3,7 +3,12 @@ import type { z } from 'zod'
 import { parseAnswer } from './api-client.ts'
 import { connectionProblem, problemFromAnswer } from './api-problem.ts'
 import { csrfHeader } from './csrf.ts'
-import { endpointAddress, type AddressOptions, type LooseAddress, type QueryValue } from './endpoint-address.ts'
+import {
+  endpointAddress,
+  type AddressOptions,
+  type LooseAddress,
+  type QueryValue,
+} from './endpoint-address.ts'
 import { announceSessionEnd, refreshOnce } from './session-refresh.ts'
 
 export type UploadProgress = { sentBytes: number; totalBytes: number; secondsLeft: number | null }
@@ -27,7 +32,10 @@ type LooseUpload = LooseAddress & UploadExtras & { fields?: Record<string, Query
  * XMLHttpRequest, because fetch cannot report what has been sent.
  * @throws ApiProblem; DOMException named AbortError when cancelled.
  */
-export function uploadFile<E extends Endpoint>(endpoint: E, options: UploadOptions<E>): Promise<EndpointOutput<E>>
+export function uploadFile<E extends Endpoint>(
+  endpoint: E,
+  options: UploadOptions<E>,
+): Promise<EndpointOutput<E>>
 export async function uploadFile(endpoint: Endpoint, options: LooseUpload): Promise<unknown> {
   let answer = await sendForm(endpoint, options)
   if (answer.status === 401 && (await refreshOnce())) answer = await sendForm(endpoint, options)
@@ -52,7 +60,9 @@ function sendForm(endpoint: Endpoint, options: LooseUpload): Promise<{ status: n
         secondsLeft: secondsLeft(loaded, total, performance.now() - startedAt),
       })
     })
-    request.addEventListener('load', () => resolve({ status: request.status, body: readText(request.responseText) }))
+    request.addEventListener('load', () =>
+      resolve({ status: request.status, body: readText(request.responseText) }),
+    )
     request.addEventListener('error', () => reject(connectionProblem()))
     request.addEventListener('abort', () => reject(new DOMException('The upload was stopped.', 'AbortError')))
     signal?.addEventListener('abort', () => request.abort(), { once: true })
