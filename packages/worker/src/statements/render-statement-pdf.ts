@@ -61,7 +61,8 @@ function drawFurniture(canvas: Canvas, statement: StatementDocument, page: numbe
   canvas.set(small(`${draft}Statement ${statement.statementNumber}`), LEFT, FOOT_Y, WIDTH / 2)
   canvas.set({ ...small(`Page ${page} of ${pages}`), align: 'right' }, LEFT + WIDTH / 2, FOOT_Y, WIDTH / 2)
   if (page === 1) return
-  canvas.set(small(`${statement.societyName} · ${statement.payeeName}`), LEFT, RUNNING_HEAD_Y, WIDTH - 120)
+  const names = small(`${statement.societyName} · ${statement.payeeName}`)
+  canvas.set(canvas.shorten(names, WIDTH - 130), LEFT, RUNNING_HEAD_Y, WIDTH - 120)
   canvas.set({ ...small(statement.monthLabel), align: 'right' }, LEFT + WIDTH - 120, RUNNING_HEAD_Y, 120)
   pdf
     .lineWidth(0.5)

@@ -119,6 +119,16 @@ export class Canvas {
     return this.pdf.widthOfString(this.prepare(styled).text)
   }
 
+  /** The text cut to one line of the width, with an ellipsis where something was cut off. */
+  shorten(styled: StyledText, width: number): StyledText {
+    if (this.widthOf(styled) <= width) return styled
+    const letters = Array.from(styled.text)
+    let kept = letters.length - 1
+    const cut = (): StyledText => ({ ...styled, text: `${letters.slice(0, kept).join('').trimEnd()}…` })
+    while (kept > 0 && this.widthOf(cut()) > width) kept -= 1
+    return cut()
+  }
+
   /** How far the baseline of the first line lies below the top of the text. */
   ascentOf({ text, face, size }: StyledText): number {
     return faceAscent(makeSettable(text, face).face) * size

@@ -68,18 +68,22 @@ function factsOf(statement: StatementDocument): readonly Fact[] {
   ]
 }
 
+/** Labels and values are a table to whoever has the page read out: side by side they would run into one word. */
 function drawFacts(canvas: Canvas, facts: readonly Fact[]): void {
   const x = RIGHT - FACTS_WIDTH
   const width = FACTS_WIDTH - FACT_LABEL_WIDTH
+  const table = canvas.element('Table')
   for (const { label, value } of facts) {
-    const height = canvas.heightOf(value, width)
     const baseline = canvas.y + canvas.ascentOf(body(label))
-    canvas.content('P', () => {
-      canvas.setOnBaseline(small(label), x, baseline, FACT_LABEL_WIDTH)
-      canvas.setOnBaseline(value, x + FACT_LABEL_WIDTH, baseline, width)
-    })
-    canvas.y += height + 2.5
+    const row = canvas.element('TR', table)
+    const drawLabel = (): void => canvas.setOnBaseline(small(label), x, baseline, FACT_LABEL_WIDTH)
+    const drawValue = (): void => canvas.setOnBaseline(value, x + FACT_LABEL_WIDTH, baseline, width)
+    canvas.content('TH', drawLabel, row, { scope: 'Row' })
+    canvas.content('TD', drawValue, row)
+    row.end()
+    canvas.y += canvas.heightOf(value, width) + 2.5
   }
+  table.end()
 }
 
 function drawAmount(canvas: Canvas, { netMinor, currency }: StatementDocument): void {
@@ -91,11 +95,9 @@ function drawAmount(canvas: Canvas, { netMinor, currency }: StatementDocument): 
   }
   const label: StyledText = { text: 'Attributed to you for the month', face: 'serif', size: 13 }
   canvas.rule(canvas.y, { weight: 1, colour: COLOURS.ink })
-  canvas.content('P', () => {
-    const baseline = canvas.y + 25
-    canvas.setOnBaseline(label, LEFT, baseline, WIDTH / 2)
-    canvas.setOnBaseline(amount, LEFT + WIDTH / 2 - 20, baseline, WIDTH / 2 + 20)
-  })
+  const baseline = canvas.y + 25
+  canvas.content('P', () => canvas.setOnBaseline(label, LEFT, baseline, WIDTH / 2))
+  canvas.content('P', () => canvas.setOnBaseline(amount, LEFT + WIDTH / 2 - 20, baseline, WIDTH / 2 + 20))
   canvas.y += 39
   canvas.rule(canvas.y, { weight: 1, colour: COLOURS.ink })
   canvas.y += 16

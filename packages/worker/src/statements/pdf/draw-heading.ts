@@ -4,14 +4,19 @@ import { COLOURS } from './page-layout.ts'
 const PARTS = { face: 'serif', size: 18, colour: COLOURS.chestnut } as const
 const SECTIONS = { face: 'serifStrong', size: 12.5, colour: COLOURS.chestnut } as const
 
-/** A heading of the second level, kept on one page with at least `followingHeight` of what it heads. */
-export function drawSectionHeading(canvas: Canvas, text: string, followingHeight = 40): void {
-  drawHeading(canvas, { ...SECTIONS, text }, 'H3', followingHeight)
+/** The heading of a section of the summary, kept on one page with `followingHeight` of what it heads. */
+export function drawSectionHeading(canvas: Canvas, text: string, followingHeight: number): void {
+  drawHeading(canvas, { ...SECTIONS, text }, 'H2', followingHeight)
 }
 
-/** The heading of a part of the statement. */
-export function drawPartHeading(canvas: Canvas, text: string, followingHeight = 80): void {
+/** The heading of a part of the statement after the summary. */
+export function drawPartHeading(canvas: Canvas, text: string, followingHeight: number): void {
   drawHeading(canvas, { ...PARTS, text }, 'H2', followingHeight)
+}
+
+/** The heading of a station within a part. */
+export function drawStationHeading(canvas: Canvas, text: string, followingHeight: number): void {
+  drawHeading(canvas, { ...SECTIONS, text }, 'H3', followingHeight)
 }
 
 function drawHeading(canvas: Canvas, styled: StyledText, type: string, followingHeight: number): void {

@@ -3,7 +3,7 @@ import { formatNumbers, type PlayNumbers } from '../number-plays.ts'
 import { type StatementDocument, type StatementLine, type StatementSection } from '../statement-document.ts'
 import { formatCoverage, formatDuration, formatPercent, nameRight } from '../statement-words.ts'
 import { type Canvas } from './canvas.ts'
-import { drawPartHeading, drawSectionHeading } from './draw-heading.ts'
+import { drawPartHeading, drawStationHeading } from './draw-heading.ts'
 import { WIDTH } from './page-layout.ts'
 import { body, code, figure, small, strong, total } from './styles.ts'
 import { type Column, drawTable } from './table.ts'
@@ -29,7 +29,7 @@ export function drawLines(canvas: Canvas, statement: StatementDocument, numbers:
   const columns = lineColumns(statement.currency, numbers)
   let before = 0
   for (const section of statement.sections) {
-    drawSectionHeading(canvas, section.stationName, 90)
+    drawStationHeading(canvas, section.stationName, 90)
     part.addItem(section.stationName)
     canvas.paragraph(small(describe(section)), { after: 2 })
     const first = before

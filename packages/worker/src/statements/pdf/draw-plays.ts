@@ -1,7 +1,7 @@
 import { type NumberedPlay } from '../number-plays.ts'
 import { formatDuration } from '../statement-words.ts'
 import { type Canvas } from './canvas.ts'
-import { drawPartHeading, drawSectionHeading } from './draw-heading.ts'
+import { drawPartHeading, drawStationHeading } from './draw-heading.ts'
 import { WIDTH } from './page-layout.ts'
 import { body, code, figure, small } from './styles.ts'
 import { type Column, drawTable } from './table.ts'
@@ -60,7 +60,7 @@ export function drawPlays(canvas: Canvas, plays: readonly NumberedPlay[]): void 
   )
   const stations = new Map(plays.map(({ stationName, timeZone }) => [stationName, timeZone]))
   for (const [stationName, timeZone] of stations) {
-    drawSectionHeading(canvas, stationName, 70)
+    drawStationHeading(canvas, stationName, 70)
     part.addItem(stationName)
     canvas.paragraph(small(`Times in ${timeZone}`), { after: 2 })
     drawTable(canvas, {

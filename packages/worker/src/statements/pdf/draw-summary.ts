@@ -142,8 +142,11 @@ export function drawHoldbacks(canvas: Canvas, statement: StatementDocument): voi
 
 /** How to question the statement, and what standing it has. */
 export function drawNotes(canvas: Canvas, statement: StatementDocument): void {
-  drawSectionHeading(canvas, 'Questions and corrections', 50)
+  const words = body(questionWords(statement))
+  const caution = small(CAUTION)
+  const height = canvas.heightOf(words, WIDTH) + canvas.heightOf(caution, WIDTH) + 12
+  drawSectionHeading(canvas, 'Questions and corrections', height)
   canvas.pdf.outline.addItem('Questions and corrections')
-  canvas.paragraph(body(questionWords(statement)), { after: 5 })
-  canvas.paragraph(small(CAUTION), { after: 8 })
+  canvas.paragraph(words, { after: 5 })
+  canvas.paragraph(caution, { after: 8 })
 }
