@@ -1,6 +1,6 @@
 import type { LocalDate } from '@fieldfare/contracts'
 import { localDateSchema } from '@fieldfare/contracts'
-import type { DayRange } from '../../months/month-status.repository.ts'
+import type { DayRange } from '../../months/closed-months.repository.ts'
 import type { LicenceTerms } from './stations.repository.ts'
 
 const DAY_MS = 86_400_000

@@ -9,8 +9,8 @@ import {
   type Transaction,
 } from '@fieldfare/database'
 import { AppError, notFound } from '../../http/app-error.ts'
-import { monthClosed } from '../../months/month-closed.ts'
-import { findClosedMonthWithin } from '../../months/month-status.repository.ts'
+import { monthNotOpen } from '../../months/month-not-open.ts'
+import { findClosedMonthWithin } from '../../months/closed-months.repository.ts'
 import { changedDays } from './changed-days.ts'
 import {
   findLicenceWithin,
@@ -114,5 +114,5 @@ async function refuseClosedMonths(
 ): Promise<void> {
   const closed = await findClosedMonthWithin(trx, changedDays(before, after))
   if (closed === null) return
-  throw monthClosed(closed.month, closed.status, 'A licence cannot change what was paid for that month.')
+  throw monthNotOpen(closed.month, closed.status, 'A licence cannot change what was paid for that month.')
 }

@@ -1,22 +1,5 @@
 import type { LocalDate, Month, MonthStatus } from '@fieldfare/contracts'
-import type { Connection, Transaction } from '@fieldfare/database'
-
-/** A month nobody has closed yet has no row. */
-export async function readMonthStatus(connection: Connection, month: Month): Promise<MonthStatus> {
-  const row: { status: MonthStatus } | undefined = await connection('distribution_months')
-    .where({ month: `${month}-01` })
-    .first('status')
-  return row?.status ?? 'open'
-}
-
-/** As {@link readMonthStatus}, and keeps it from changing until the transaction ends. */
-export async function holdMonthStatus(trx: Transaction, month: Month): Promise<MonthStatus> {
-  const row: { status: MonthStatus } | undefined = await trx('distribution_months')
-    .where({ month: `${month}-01` })
-    .forShare()
-    .first('status')
-  return row?.status ?? 'open'
-}
+import type { Transaction } from '@fieldfare/database'
 
 export type DayRange = { from: LocalDate; to: LocalDate | null }
 
@@ -36,8 +19,8 @@ export async function findClosedMonthWithin(
         ])
       }
     })
-    .orderBy('month')
+    .orderBy('distribution_months.month')
     .forShare()
-    .first(trx.raw("to_char(month, 'YYYY-MM') as month"), 'status')
+    .first(trx.raw("to_char(distribution_months.month, 'YYYY-MM') as month"), 'status')
   return row ?? null
 }
