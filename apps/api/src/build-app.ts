@@ -1,6 +1,8 @@
 import cookieParser from 'cookie-parser'
 import express, { type Express, type Router } from 'express'
+import { createAdministrationRouter } from './features/administration/administration.router.ts'
 import { createAuthRouter } from './features/auth/auth.router.ts'
+import { createDocumentationRouter } from './features/documentation/documentation.router.ts'
 import { createHealthRouter } from './features/health/health.router.ts'
 import type { Dependencies } from './http/dependencies.ts'
 import { requestContext } from './http/request-context.ts'
@@ -12,7 +14,12 @@ import { securityHeaders } from './middleware/security-headers.ts'
 import { serveWebApplication } from './middleware/web-application.ts'
 
 /** Every feature of the API; a new one is added here and nowhere else. */
-const features: readonly ((dependencies: Dependencies) => Router)[] = [createHealthRouter, createAuthRouter]
+const features: readonly ((dependencies: Dependencies) => Router)[] = [
+  createHealthRouter,
+  createDocumentationRouter,
+  createAuthRouter,
+  createAdministrationRouter,
+]
 
 /** Puts the application together. It neither listens nor connects: `server.ts` does. */
 export function buildApp(dependencies: Dependencies): Express {
@@ -27,7 +34,7 @@ export function buildApp(dependencies: Dependencies): Express {
   app.use(requestLog(logger, (request) => requestContext(request).correlationId))
   app.use(cookieParser())
   for (const createFeature of features) app.use(createFeature(dependencies))
-  app.use('/api', express.Router().use(refuseUnknownAddress))
+  app.use('/api', refuseUnknownAddress)
   if (configuration.webDirectory !== null) app.use(serveWebApplication(configuration.webDirectory))
   app.use(refuseUnknownAddress)
   app.use(answerProblem)

@@ -14,7 +14,8 @@ const patterns = endpoints.map((endpoint) => ({ method: endpoint.method, pattern
 
 /** Behind all features: an address that is known by another method answers 405, everything else 404. */
 export function refuseUnknownAddress(request: Request, response: Response, next: NextFunction): void {
-  const methods = patterns.filter(({ pattern }) => pattern.test(request.path)).map(({ method }) => method)
+  const path = request.baseUrl + request.path
+  const methods = patterns.filter(({ pattern }) => pattern.test(path)).map(({ method }) => method)
   if (methods.length === 0 || methods.some((method) => method === request.method)) {
     next(new AppError('not-found', { detail: NO_SUCH_ADDRESS }))
     return

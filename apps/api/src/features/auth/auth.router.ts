@@ -17,13 +17,18 @@ import type { CookieJar } from '../../http/cookie-jar.ts'
 import type { Dependencies } from '../../http/dependencies.ts'
 import { route } from '../../http/route.ts'
 import { clearSessionCookies, REFRESH_COOKIE, setSessionCookies } from '../../http/session-cookies.ts'
-import { createAccountAccessService } from './account-access.service.ts'
 import { presentSession } from './auth.presenter.ts'
 import { createAuthService } from './auth.service.ts'
+import { createInvitationService } from './invitation.service.ts'
+import { createOwnSessionsService } from './own-sessions.service.ts'
+import { createPasswordResetService } from './password-reset.service.ts'
 import type { OpenedSession } from './session-lifecycle.ts'
 
 export function createAuthRouter(dependencies: Dependencies): Router {
   const auth = createAuthService(dependencies)
+  const own = createOwnSessionsService(dependencies)
+  const resets = createPasswordResetService(dependencies)
+  const invitations = createInvitationService(dependencies, auth.lifecycle)
   const isSecure = dependencies.configuration.publicUrl.startsWith('https:')
   const forget = (cookies: CookieJar) => clearSessionCookies(cookies, isSecure)
 
@@ -47,49 +52,41 @@ export function createAuthRouter(dependencies: Dependencies): Router {
   router.use(route(getSession, async ({ actor }) => presentSession(await auth.describeSession(actor.userId))))
   router.use(
     route(signOut, async ({ actor, sessionId, cookies }) => {
-      await auth.endOwnSession(actor, sessionId, 'signed-out')
+      await own.endOwnSession(actor, sessionId, 'signed-out')
       forget(cookies)
     }),
   )
   router.use(
     route(listSessions, async ({ actor, sessionId }) => {
-      const sessions = await auth.listSessions(actor)
+      const sessions = await own.listSessions(actor)
       return { items: sessions.map((session) => ({ ...session, isCurrent: session.id === sessionId })) }
     }),
   )
   router.use(
     route(endSession, async ({ actor, params }) =>
-      auth.endOwnSession(actor, params.sessionId, 'ended-by-user'),
+      own.endOwnSession(actor, params.sessionId, 'ended-by-user'),
     ),
   )
   router.use(
     route(signOutEverywhere, async ({ actor, cookies }) => {
-      await auth.signOutEverywhere(actor)
+      await own.signOutEverywhere(actor)
       forget(cookies)
     }),
   )
   router.use(
     route(changePassword, async ({ actor, sessionId, body, meta }) =>
-      auth.changePassword({ actor, sessionId, ip: meta.ip }, body),
+      own.changePassword({ actor, sessionId, ip: meta.ip }, body),
     ),
   )
-  mountAccountLinks(router, createAccountAccessService(dependencies, auth.lifecycle), enter)
-  return router
-}
-
-function mountAccountLinks(
-  router: Router,
-  access: ReturnType<typeof createAccountAccessService>,
-  enter: (opened: OpenedSession, cookies: CookieJar) => Promise<ReturnType<typeof presentSession>>,
-): void {
   router.use(
-    route(requestPasswordReset, async ({ body, meta }) => access.requestPasswordReset(body.email, meta.ip)),
+    route(requestPasswordReset, async ({ body, meta }) => resets.requestPasswordReset(body.email, meta.ip)),
   )
-  router.use(route(resetPassword, async ({ body }) => access.resetPassword(body)))
-  router.use(route(readInvitation, async ({ body }) => access.readInvitation(body.token)))
+  router.use(route(resetPassword, async ({ body }) => resets.resetPassword(body)))
+  router.use(route(readInvitation, async ({ body }) => invitations.readInvitation(body.token)))
   router.use(
     route(acceptInvitation, async ({ body, meta, cookies }) =>
-      enter(await access.acceptInvitation(body, meta.userAgent), cookies),
+      enter(await invitations.acceptInvitation(body, meta.userAgent), cookies),
     ),
   )
+  return router
 }

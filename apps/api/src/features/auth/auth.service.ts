@@ -1,23 +1,15 @@
-import type { SessionId, UserId } from '@fieldfare/contracts'
+import type { UserId } from '@fieldfare/contracts'
 import {
-  endSession,
-  endSessionsOfUser,
   findCredentials,
   findUser,
   inTransaction,
-  listLiveSessions,
-  readPasswordHash,
   readSociety,
-  recordAudit,
   recordSignIn,
-  updatePasswordHash,
-  type Actor,
   type Society,
-  type SessionRecord,
   type UserRecord,
 } from '@fieldfare/database'
-import { hashPassword, isPasswordRight } from '../../accounts/passwords.ts'
-import { AppError, fieldRefused, notFound } from '../../http/app-error.ts'
+import { isPasswordRight } from '../../accounts/passwords.ts'
+import { AppError } from '../../http/app-error.ts'
 import type { Dependencies } from '../../http/dependencies.ts'
 import { createSessionTokens } from '../../http/session-tokens.ts'
 import { createSessionLifecycle, type OpenedSession } from './session-lifecycle.ts'
@@ -26,22 +18,19 @@ import { createSignInThrottle } from './sign-in-throttle.ts'
 export type Visitor = { ip: string; userAgent: string }
 export type SessionDetails = { user: UserRecord; society: Society; hasLocalInbox: boolean }
 
-export type AuthService = ReturnType<typeof createAuthService>
-
 function sessionOver(detail: string): AppError {
   return new AppError('not-signed-in', { detail })
 }
 
-/** Signing in and out, keeping a session alive, and a person's own password. */
+/** Signing in, keeping a session alive, and saying who is signed in. */
 export function createAuthService(dependencies: Dependencies) {
-  const { database, redis, configuration, clock, events } = dependencies
+  const { database, redis, configuration, clock } = dependencies
   const lifecycle = createSessionLifecycle({
     database,
     tokens: createSessionTokens(configuration.tokenSecret),
     clock,
   })
   const signInThrottle = createSignInThrottle(redis, 'sign-in')
-  const passwordThrottle = createSignInThrottle(redis, 'change-password')
 
   async function describeSession(userId: UserId): Promise<SessionDetails> {
     const [user, society] = await Promise.all([findUser(database, userId), readSociety(database)])
@@ -81,60 +70,5 @@ export function createAuthService(dependencies: Dependencies) {
     }
   }
 
-  async function endOwnSession(
-    actor: Actor,
-    sessionId: SessionId,
-    reason: 'signed-out' | 'ended-by-user',
-  ): Promise<void> {
-    const isEnded = await inTransaction(database, (trx) =>
-      endSession(trx, { id: sessionId, userId: actor.userId }, reason),
-    )
-    if (!isEnded) throw notFound('This session')
-    events.closeSessions([sessionId])
-  }
-
-  async function signOutEverywhere(actor: Actor): Promise<void> {
-    const ended = await inTransaction(database, (trx) =>
-      endSessionsOfUser(trx, actor.userId, 'signed-out-everywhere'),
-    )
-    events.closeSessions(ended)
-  }
-
-  async function changePassword(
-    signedIn: { actor: Actor; sessionId: SessionId; ip: string },
-    passwords: { currentPassword: string; newPassword: string },
-  ): Promise<void> {
-    const { actor, sessionId } = signedIn
-    const person = { account: actor.userId, ip: signedIn.ip }
-    await passwordThrottle.admit(person)
-    const held = await readPasswordHash(database, actor.userId)
-    if (!(await isPasswordRight(passwords.currentPassword, held))) {
-      throw fieldRefused('currentPassword', 'This is not your present password.')
-    }
-    await passwordThrottle.forgive(person)
-    const passwordHash = await hashPassword(passwords.newPassword, 'newPassword')
-    const ended = await inTransaction(database, async (trx) => {
-      await updatePasswordHash(trx, actor.userId, passwordHash)
-      await recordAudit(trx, {
-        actor,
-        action: 'change-password',
-        subjectKind: 'user',
-        subjectId: actor.userId,
-        summary: 'Changed the own password.',
-      })
-      return endSessionsOfUser(trx, actor.userId, 'password-changed', sessionId)
-    })
-    events.closeSessions(ended)
-  }
-
-  return {
-    lifecycle,
-    describeSession,
-    signIn,
-    refresh,
-    endOwnSession,
-    signOutEverywhere,
-    changePassword,
-    listSessions: (actor: Actor): Promise<SessionRecord[]> => listLiveSessions(database, actor.userId),
-  }
+  return { lifecycle, describeSession, signIn, refresh }
 }
