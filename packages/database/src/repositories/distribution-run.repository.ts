@@ -192,6 +192,11 @@ export async function readSubjectNames(
   return new Map([...works, ...recordings].map(({ id, ...names }) => [id, names]))
 }
 
+export async function readStationNames(connection: Connection): Promise<Map<string, string>> {
+  const rows: { id: string; name: string }[] = await connection('stations').select({ id: 'id', name: 'name' })
+  return new Map(rows.map(({ id, name }) => [id, name]))
+}
+
 /** A run that could not be calculated: it says why, and the month is open again. */
 export async function markDistributionFailed(
   trx: Transaction,

@@ -1,0 +1,1 @@
+export { startWorker, type RunningWorker } from './worker.ts'
