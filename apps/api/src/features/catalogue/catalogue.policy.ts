@@ -1,0 +1,5 @@
+import type { Actor } from '@fieldfare/database'
+
+export function canEditCatalogue(actor: Pick<Actor, 'role'>): boolean {
+  return actor.role === 'clerk'
+}
