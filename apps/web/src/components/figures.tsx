@@ -40,7 +40,7 @@ export function Code({ kind, value, withLabel = false }: CodeProps) {
   const { label, format } = codeFormats[kind]
   return (
     <span className="figures">
-      {withLabel && <span className="font-sans text-slate">{label} </span>}
+      {withLabel && <span className="mr-1 font-sans text-slate">{label} </span>}
       {format(value)}
     </span>
   )

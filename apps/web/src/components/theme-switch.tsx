@@ -12,7 +12,7 @@ const looks = {
 export function ThemeSwitch({ compact = false }: { compact?: boolean }) {
   const chosen = useThemeChoice()
   return (
-    <fieldset className="inline-flex border border-edge bg-sheet">
+    <fieldset className="inline-flex w-fit border border-edge bg-sheet">
       <legend className="sr-only">Light or dark</legend>
       {themeChoices.map((choice) => {
         const { label, icon: Icon } = looks[choice]

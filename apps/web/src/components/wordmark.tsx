@@ -1,7 +1,7 @@
 /** The name in the title face over a short ribbon of airtime: our own mark, nothing else. */
 export function Wordmark({ size = 'small' }: { size?: 'small' | 'large' }) {
   return (
-    <span className="inline-grid gap-1">
+    <span className="inline-grid w-fit gap-1">
       <span
         className={
           size === 'large'

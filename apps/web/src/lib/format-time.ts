@@ -52,6 +52,13 @@ export function formatDay(day: string): string {
   )
 }
 
+/** A day within a month that is named elsewhere: Sun 29. */
+export function formatShortDay(day: string): string {
+  return formatterFor('short day UTC', { weekday: 'short', day: 'numeric', timeZone: 'UTC' }).format(
+    new Date(`${day}T00:00:00Z`),
+  )
+}
+
 /** A month, '2026-11', as people read it: November 2026. */
 export function formatMonth(month: string): string {
   return formatterFor('month UTC', { month: 'long', year: 'numeric', timeZone: 'UTC' }).format(

@@ -131,7 +131,7 @@ function RibbonToolbar({ from, timeZone, controls, isTableShown, onToggleTable }
         {formatClock(view.fromMs, timeZone, 'second')} – {formatClock(view.toMs, timeZone, 'second')}{' '}
         {formatZone(from, timeZone)}
       </p>
-      <div role="group" aria-label="Ribbon" className="flex items-center">
+      <div role="group" aria-label="Ribbon" className="flex flex-wrap items-center">
         <IconButton icon={ChevronLeft} label="Earlier" disabled={isWhole} onClick={() => pan(-0.5)} />
         <IconButton icon={ChevronRight} label="Later" disabled={isWhole} onClick={() => pan(0.5)} />
         <IconButton icon={ZoomIn} label="Look closer" onClick={() => zoom(0.5)} />

@@ -1,7 +1,7 @@
 import { useEffect, useMemo, useRef, type KeyboardEvent } from 'react'
 import { Link } from 'react-router'
 import { formatHours } from '../../lib/format.ts'
-import { formatDay } from '../../lib/format-time.ts'
+import { formatDay, formatShortDay } from '../../lib/format-time.ts'
 import { useShownTheme } from '../../lib/theme.ts'
 import { RibbonLegend } from './ribbon-legend.tsx'
 import { paintRibbon } from './ribbon-paint.ts'
@@ -61,7 +61,7 @@ export function RibbonWeave({ label, days, dayHref }: RibbonWeaveProps) {
             <th scope="col" className="w-full font-semibold">
               Midnight to midnight
             </th>
-            <th scope="col" className="pl-3 text-right font-semibold">
+            <th scope="col" className="pl-3 text-right font-semibold max-sm:sr-only">
               Held
             </th>
             <th scope="col" className="pl-3 text-right font-semibold">
@@ -91,14 +91,14 @@ function WeaveRow({ day, href }: { day: WeaveDay; href: string }) {
     <tr className="group relative hover:bg-band">
       <th scope="row" className="pr-3 text-left font-normal whitespace-nowrap">
         {/* The link covers the row, so that the whole ribbon can be pressed. */}
-        <Link to={href} className="link after:absolute after:inset-0">
-          {formatDay(day.day)}
+        <Link to={href} aria-label={formatDay(day.day)} className="link after:absolute after:inset-0">
+          {formatShortDay(day.day)}
         </Link>
       </th>
       <td className="py-px">
         <ThinRibbon day={day} />
       </td>
-      <td className="pl-3 text-right figures">{formatHours(day.heldSeconds)}</td>
+      <td className="pl-3 text-right figures max-sm:sr-only">{formatHours(day.heldSeconds)}</td>
       <td className="pl-3 text-right figures">{day.plays}</td>
     </tr>
   )
