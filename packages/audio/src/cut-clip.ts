@@ -23,7 +23,7 @@ const SAMPLE_RATE_HZ = 44_100
 const ENCODINGS = {
   mp3: {
     mediaType: 'audio/mpeg',
-    args: ['-c:a', 'libmp3lame', '-b:a', '96k', '-write_xing', '0', '-f', 'mp3'],
+    args: ['-c:a', 'libmp3lame', '-b:a', '96k', '-write_xing', '0', '-id3v2_version', '0', '-f', 'mp3'],
   },
   wav: { mediaType: 'audio/wav', args: ['-c:a', 'pcm_s16le', '-f', 's16le'] },
 } as const
