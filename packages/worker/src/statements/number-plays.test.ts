@@ -3,14 +3,17 @@ import { formatNumbers, numberPlays } from './number-plays.ts'
 import { sampleStatement } from './testing/sample-statement.ts'
 
 describe('numberPlays', () => {
-  it('gives every play one number, from 1, in the order the lines name them', () => {
-    const statement = sampleStatement(2, 5)
+  it('numbers every play from 1, station by station, within it by recording and then by time', () => {
+    const statement = sampleStatement(2, 12)
     const { plays } = numberPlays(statement)
-    const references = statement.sections.flatMap(({ lines }) =>
-      lines.flatMap((line) => line.plays.map(({ reference }) => reference)),
-    )
-    expect(plays.map(({ number }) => number)).toEqual(references.map((_, index) => index + 1))
-    expect(plays.map(({ reference }) => reference)).toEqual(references)
+    const places = plays.map(({ number, stationName, recordingTitle, localStart }) => {
+      const station = statement.sections.findIndex((section) => section.stationName === stationName)
+      return { number, place: `${station} ${recordingTitle} ${localStart}` }
+    })
+    expect(places.map(({ number }) => number)).toEqual(plays.map((_, index) => index + 1))
+    expect(places.map(({ place }) => place)).toEqual(places.map(({ place }) => place).sort())
+    const count = statement.sections.flatMap(({ lines }) => lines.flatMap((line) => line.plays)).length
+    expect(plays).toHaveLength(count)
   })
 
   it('numbers a play once when it earned for its work and for its recording', () => {
@@ -36,5 +39,10 @@ describe('formatNumbers', () => {
     [[1, 2, 4, 9, 10], '1–2, 4, 9–10'],
   ])('writes %j as "%s"', (numbers, text) => {
     expect(formatNumbers(numbers)).toBe(text)
+  })
+
+  it('stops before a list too long to be of use on paper', () => {
+    const odd = Array.from({ length: 100 }, (_, index) => 2 * index + 1)
+    expect(formatNumbers(odd)).toMatch(/^1, 3, 5, .*, 79 and more; the CSV file lists all$/)
   })
 })

@@ -7,18 +7,22 @@ export type NumberedPlay = StatementPlay & {
   readonly timeZone: string
 }
 
-/** The plays of a statement, numbered from 1 in the order in which its lines first name them. */
+/** The plays of a statement, numbered from 1: station by station, within it by recording and then by time. */
 export type PlayNumbers = {
   readonly plays: readonly NumberedPlay[]
   /** The numbers of a line's plays, ascending. */
   readonly of: (line: StatementLine) => readonly number[]
 }
 
-/** A play is numbered once, however many lines it appears in. */
+/**
+ * A play is numbered once, however many lines it appears in. The plays of one recording have numbers in a row, so
+ * that a line refers to them by few ranges.
+ */
 export function numberPlays(statement: StatementDocument): PlayNumbers {
   const numbered = new Map<string, NumberedPlay>()
   for (const { stationName, timeZone, lines } of statement.sections) {
-    for (const play of lines.flatMap((line) => line.plays)) {
+    const plays = lines.flatMap((line) => line.plays).sort(comparePlays)
+    for (const play of plays) {
       if (numbered.has(play.reference)) continue
       numbered.set(play.reference, { ...play, number: numbered.size + 1, stationName, timeZone })
     }
@@ -32,7 +36,24 @@ export function numberPlays(statement: StatementDocument): PlayNumbers {
   }
 }
 
-/** Numbers as ranges, for print: `1–4, 9`. */
+function comparePlays(left: StatementPlay, right: StatementPlay): number {
+  const keyOf = ({ recordingTitle, localStart, reference }: StatementPlay): readonly string[] => [
+    recordingTitle,
+    localStart,
+    reference,
+  ]
+  const rightKey = keyOf(right)
+  for (const [index, text] of keyOf(left).entries()) {
+    const other = rightKey[index] ?? ''
+    if (text !== other) return text < other ? -1 : 1
+  }
+  return 0
+}
+
+/** Beyond so many ranges a list of numbers helps nobody on paper. */
+const PRINTED_RANGES = 40
+
+/** Ascending numbers as ranges, for print: `1–4, 9`. */
 export function formatNumbers(numbers: readonly number[]): string {
   const ranges: { first: number; last: number }[] = []
   for (const number of numbers) {
@@ -40,5 +61,9 @@ export function formatNumbers(numbers: readonly number[]): string {
     if (range?.last === number - 1) range.last = number
     else ranges.push({ first: number, last: number })
   }
-  return ranges.map(({ first, last }) => (first === last ? `${first}` : `${first}–${last}`)).join(', ')
+  const printed = ranges
+    .slice(0, PRINTED_RANGES)
+    .map(({ first, last }) => (first === last ? `${first}` : `${first}–${last}`))
+    .join(', ')
+  return ranges.length > PRINTED_RANGES ? `${printed} and more; the CSV file lists all` : printed
 }

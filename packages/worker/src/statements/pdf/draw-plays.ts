@@ -7,10 +7,10 @@ import { body, code, figure, small } from './styles.ts'
 import { type Column, drawTable } from './table.ts'
 
 const NUMBER_WIDTH = 40
-const TIME_WIDTH = 116
+const TIME_WIDTH = 112
 const LENGTH_WIDTH = 50
 const CREDITED_WIDTH = 56
-const REFERENCE_WIDTH = 92
+const REFERENCE_WIDTH = 84
 const TITLE_WIDTH = WIDTH - NUMBER_WIDTH - TIME_WIDTH - LENGTH_WIDTH - CREDITED_WIDTH - REFERENCE_WIDTH
 
 const COLUMNS: readonly Column<NumberedPlay>[] = [
@@ -19,13 +19,13 @@ const COLUMNS: readonly Column<NumberedPlay>[] = [
     heading: 'Start, station time',
     width: TIME_WIDTH,
     align: 'left',
-    cell: ({ localStart }) => [figure(localStart.replace('T', '  '))],
+    cell: ({ localStart }) => [figure(localStart.replace('T', ' '))],
   },
   {
     heading: 'Recording',
     width: TITLE_WIDTH,
     align: 'left',
-    cell: ({ recordingTitle }) => [body(recordingTitle)],
+    cell: ({ recordingTitle }) => [{ ...body(recordingTitle), size: 8.5 }],
   },
   {
     heading: 'Length',
@@ -66,6 +66,7 @@ export function drawPlays(canvas: Canvas, plays: readonly NumberedPlay[]): void 
     drawTable(canvas, {
       columns: COLUMNS,
       subject: stationName,
+      rowPadding: 1.25,
       rows: plays.filter((play) => play.stationName === stationName),
     })
     canvas.y += 6

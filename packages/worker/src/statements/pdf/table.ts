@@ -15,22 +15,30 @@ export type Table<Row> = {
   readonly rows: readonly Row[]
   /** What the table is about, said again above its headings on every further page. */
   readonly subject?: string
+  /** Space above and below the text of a row, in points; less where rows are many and short. */
+  readonly rowPadding?: number
   /** Closing rows, ruled off; they stay together with the last row. */
   readonly totals?: readonly Row[]
 }
 
 const GUTTER = 10
+const HEADING_PADDING = 3.5
 const ROW_PADDING = 3.5
 const HEADING: TextStyle = { face: 'sansStrong', size: 8, colour: COLOURS.slate }
 
-type MeasuredRow = { cells: readonly (readonly StyledText[])[]; ascent: number; height: number }
+type MeasuredRow = {
+  cells: readonly (readonly StyledText[])[]
+  padding: number
+  ascent: number
+  height: number
+}
 
 /** Draws a table from the current place on; its headings come again at the top of every page it goes on to. */
 export function drawTable<Row>(canvas: Canvas, table: Table<Row>): void {
   const { columns } = table
   const element = canvas.element('Table')
-  const rows = table.rows.map((row) => measure(canvas, columns, row))
-  const totals = (table.totals ?? []).map((row) => measure(canvas, columns, row))
+  const rows = table.rows.map((row) => measure(canvas, table, row))
+  const totals = (table.totals ?? []).map((row) => measure(canvas, table, row))
   const totalsHeight = totals.reduce((sum, { height }) => sum + height, 0)
   const firstHeight = (rows[0]?.height ?? 0) + (rows.length <= 1 ? totalsHeight : 0)
   canvas.reserve(headingHeight(canvas, columns) + firstHeight)
@@ -55,7 +63,11 @@ export function drawTable<Row>(canvas: Canvas, table: Table<Row>): void {
   canvas.y += 8
 }
 
-function measure<Row>(canvas: Canvas, columns: readonly Column<Row>[], row: Row): MeasuredRow {
+function measure<Row>(
+  canvas: Canvas,
+  { columns, rowPadding = ROW_PADDING }: Table<Row>,
+  row: Row,
+): MeasuredRow {
   const cells = columns.map(({ cell }) => cell(row))
   const ascent = Math.max(0, ...cells.map((pieces) => firstAscent(canvas, pieces)))
   const heights = cells.map((pieces, index) =>
@@ -64,7 +76,7 @@ function measure<Row>(canvas: Canvas, columns: readonly Column<Row>[], row: Row)
       ascent - firstAscent(canvas, pieces),
     ),
   )
-  return { cells, ascent, height: Math.max(...heights) + 2 * ROW_PADDING }
+  return { cells, padding: rowPadding, ascent, height: Math.max(...heights) + 2 * rowPadding }
 }
 
 /** The first lines of a row's cells stand on one baseline, whatever their face and size. */
@@ -89,7 +101,7 @@ function headingHeight<Row>(canvas: Canvas, columns: readonly Column<Row>[]): nu
   const heights = columns.map(({ heading }, index) =>
     canvas.heightOf({ ...HEADING, text: heading }, textWidth(columns, index)),
   )
-  return Math.max(...heights) + 2 * ROW_PADDING
+  return Math.max(...heights) + 2 * HEADING_PADDING
 }
 
 /** With a table element the headings enter the structure; without, they are a repetition for the eye. */
@@ -102,7 +114,7 @@ function drawHeadings<Row>(
   const row = element ? canvas.element('TR', element) : undefined
   forEachColumn(columns, ({ heading, align }, x, width) => {
     const styled = { ...HEADING, text: heading, align }
-    const y = canvas.y + height - ROW_PADDING - canvas.heightOf(styled, width)
+    const y = canvas.y + height - HEADING_PADDING - canvas.heightOf(styled, width)
     const draw = (): void => canvas.set(styled, x, y, width)
     if (row) canvas.content('TH', draw, row, { scope: 'Column' })
     else canvas.artifact(draw, 'Pagination')
@@ -115,7 +127,7 @@ function drawHeadings<Row>(
 function drawRow<Row>(
   canvas: Canvas,
   columns: readonly Column<Row>[],
-  { cells, ascent, height }: MeasuredRow,
+  { cells, padding, ascent, height }: MeasuredRow,
   element: PDFKit.PDFStructureElement,
 ): void {
   const row = canvas.element('TR', element)
@@ -124,7 +136,7 @@ function drawRow<Row>(
       'TD',
       () => {
         const pieces = cells[index] ?? []
-        let y = canvas.y + ROW_PADDING + ascent - firstAscent(canvas, pieces)
+        let y = canvas.y + padding + ascent - firstAscent(canvas, pieces)
         for (const piece of pieces) {
           canvas.set({ ...piece, align }, x, y, width)
           y += canvas.heightOf(piece, width)
