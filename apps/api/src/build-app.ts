@@ -4,6 +4,10 @@ import { createAdministrationRouter } from './features/administration/administra
 import { createAuthRouter } from './features/auth/auth.router.ts'
 import { createDocumentationRouter } from './features/documentation/documentation.router.ts'
 import { createHealthRouter } from './features/health/health.router.ts'
+import { createDetectionsRouter } from './features/detections/detections.router.ts'
+import { createPlaysRouter } from './features/plays/plays.router.ts'
+import { createOverviewRouter } from './features/overview/overview.router.ts'
+import { createDistributionsRouter } from './features/distributions/distributions.router.ts'
 import type { Dependencies } from './http/dependencies.ts'
 import { requestContext } from './http/request-context.ts'
 import { provideContext } from './middleware/context.ts'
@@ -19,6 +23,10 @@ const features: readonly ((dependencies: Dependencies) => Router)[] = [
   createDocumentationRouter,
   createAuthRouter,
   createAdministrationRouter,
+  createDetectionsRouter,
+  createPlaysRouter,
+  createOverviewRouter,
+  createDistributionsRouter,
 ]
 
 /** Puts the application together. It neither listens nor connects: `server.ts` does. */
