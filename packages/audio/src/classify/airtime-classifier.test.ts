@@ -54,7 +54,7 @@ describe('airtime classifier', () => {
 
   it('finds speech, music and silence where they are', async () => {
     const speech = await renderSpeech(TEXT, { name: 'en-gb+m4', sampleRateHz: RATE_HZ })
-    if (speech === null) return expect(speech).toBeNull()
+    if (speech === null) throw new Error('espeak-ng is needed for this test')
     const spoken = speech.length / RATE_HZ
     const log = join(tuneOf(110, 30), speech, new Float32Array(5 * RATE_HZ), tuneOf(111, 30))
     const spans = classify(log)

@@ -96,7 +96,7 @@ async function* decodeBlocks(
   progress: Progress,
 ): AsyncGenerator<Float32Array, void, undefined> {
   const { sampleRateHz, signal } = options
-  let firstError: unknown = null
+  let firstError: Error | null = null
   for (const decoder of await chooseDecoders(source, inspection, options.decoder)) {
     progress.decoder = decoder
     const outcome: FfmpegOutcome = { problem: null }
@@ -110,13 +110,13 @@ async function* decodeBlocks(
       progress.problem = outcome.problem
     } catch (error) {
       signal?.throwIfAborted()
-      firstError ??= error
+      firstError ??= error instanceof AudioError ? error : undecodable(String(error))
       progress.problem = String(error)
     }
     // What was decoded counts; only a recording that gave nothing is tried again and at last refused.
     if (progress.samples > 0) return
   }
-  if (firstError) throw firstError instanceof AudioError ? firstError : undecodable(String(firstError))
+  if (firstError) throw firstError
 }
 
 function peakOf(block: Float32Array, peak: number): number {
