@@ -1,5 +1,6 @@
+import type { Line } from './aligned-hits.ts'
 import { logChanceOf, spanOf, type AlignmentEvidence } from './alignment.ts'
-import { OFFSET_BIN_SHIFT } from './offset-histogram.ts'
+import { OFFSET_BIN_SHIFT } from './background.ts'
 import { SECONDS_PER_FRAME } from './parameters.ts'
 import type { Span } from './span.ts'
 
@@ -55,14 +56,14 @@ export type Claim = {
 
 /** Frames of the log as recorded (not brought to speed) of a stretch of hits. */
 export function claimFor(evidence: AlignmentEvidence, span: Span): Claim {
-  const { hits, variant } = evidence
+  const { hits } = evidence
   let endFrame = 0
   for (let i = span.first; i <= span.last; i++) endFrame = Math.max(endFrame, hits.targetFrames[i])
   return {
     evidence,
     span,
-    startFrame: hits.logFrames[span.first] / variant.speedRatio,
-    endFrame: endFrame / variant.speedRatio,
+    startFrame: hits.logFrames[span.first],
+    endFrame,
     logChance: logChanceOf(evidence, span),
   }
 }
@@ -78,7 +79,7 @@ export function logFalseAlarms(logChance: number, totalFrames: number, speedVari
   return logChance + Math.log((totalFrames >> OFFSET_BIN_SHIFT) * LOOKS_PER_HOUR * speedVariants)
 }
 
-function fitLine({ hits }: AlignmentEvidence, { first, last }: Span): { slope: number; intercept: number } {
+function fitLine({ hits, variant }: AlignmentEvidence, { first, last }: Span): Line {
   const count = last - first + 1
   let meanLog = 0
   let meanReference = 0
@@ -94,7 +95,7 @@ function fitLine({ hits }: AlignmentEvidence, { first, last }: Span): { slope: n
     together += x * (hits.referenceFrames[i] - meanReference)
   }
   // Below five seconds the slope would be noise.
-  const slope = hits.logFrames[last] - hits.logFrames[first] > 150 ? together / spread : 1
+  const slope = hits.logFrames[last] - hits.logFrames[first] > 150 ? together / spread : variant.speedRatio
   return { slope, intercept: meanReference - slope * meanLog }
 }
 
@@ -106,12 +107,11 @@ export function describeClaim(
   logSeconds: number,
 ): Detection {
   const { evidence, span, startFrame, endFrame } = claim
-  const { hits, recording, variant } = evidence
+  const { hits, recording } = evidence
   const line = fitLine(evidence, span)
-  const speedRatio = variant.speedRatio * line.slope
+  const speedRatio = line.slope
   const length = recording.frames * SECONDS_PER_FRAME
-  const referenceAt = (frame: number) =>
-    (frame * variant.speedRatio * line.slope + line.intercept) * SECONDS_PER_FRAME
+  const referenceAt = (frame: number) => (frame * line.slope + line.intercept) * SECONDS_PER_FRAME
   let startSeconds = startFrame * SECONDS_PER_FRAME
   let endSeconds = endFrame * SECONDS_PER_FRAME
   const missingStart = referenceAt(startFrame)
@@ -122,7 +122,7 @@ export function describeClaim(
   const pairs: EvidencePair[] = []
   for (let i = span.first; i <= span.last; i += step) {
     pairs.push({
-      logSeconds: (hits.logFrames[i] / variant.speedRatio) * SECONDS_PER_FRAME,
+      logSeconds: hits.logFrames[i] * SECONDS_PER_FRAME,
       referenceSeconds: hits.referenceFrames[i] * SECONDS_PER_FRAME,
     })
   }

@@ -14,11 +14,11 @@ export type Explained = {
 
 /** Stretches of hits outside everything explained, in the order of time. */
 function hitsOutside(claim: Claim, explained: readonly Explained[]): Span[] {
-  const { hits, variant } = claim.evidence
+  const { hits } = claim.evidence
   const spans: Span[] = []
   let first = -1
   for (let i = claim.span.first; i <= claim.span.last + 1; i++) {
-    const frame = i <= claim.span.last ? hits.logFrames[i] / variant.speedRatio : -1
+    const frame = i <= claim.span.last ? hits.logFrames[i] : -1
     const isOutside =
       frame >= 0 && !explained.some(({ startFrame, endFrame }) => frame >= startFrame && frame <= endFrame)
     if (isOutside && first < 0) first = i
@@ -41,7 +41,7 @@ function restricted(claim: Claim, part: Span): Claim {
 
 /** How far the claim reaches into explained stretches beside the part outside, if only as far as a crossfade. */
 function withCrossfade(claim: Claim, part: Claim, explained: readonly Explained[]): Claim {
-  const { hits, variant } = claim.evidence
+  const { hits } = claim.evidence
   let { first, last } = part.span
   const isOwn = explained.some(
     (other) =>
@@ -50,11 +50,10 @@ function withCrossfade(claim: Claim, part: Claim, explained: readonly Explained[
       other.startFrame < claim.endFrame,
   )
   if (isOwn) return part
-  const reach = CROSSFADE_FRAMES * variant.speedRatio
   const firstFrame = hits.logFrames[first]
   const lastFrame = hits.logFrames[last]
-  while (first > claim.span.first && firstFrame - hits.logFrames[first - 1] <= reach) first--
-  while (last < claim.span.last && hits.logFrames[last + 1] - lastFrame <= reach) last++
+  while (first > claim.span.first && firstFrame - hits.logFrames[first - 1] <= CROSSFADE_FRAMES) first--
+  while (last < claim.span.last && hits.logFrames[last + 1] - lastFrame <= CROSSFADE_FRAMES) last++
   // A claim that goes on further inside is an echo of a shared passage there, not a fade.
   if (first > claim.span.first) first = part.span.first
   if (last < claim.span.last) last = part.span.last

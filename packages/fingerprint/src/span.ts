@@ -2,7 +2,7 @@
 export type Span = { readonly first: number; readonly last: number }
 
 /** A stretch may be this much sparser than its middle and still belong to the play (fades, speech above it). */
-const SPARSENESS = 0.1
+const SPARSENESS = 0.04
 const LOWEST_COST_PER_FRAME = 0.01
 
 function heaviest(frames: Float64Array, costPerFrame: number): Span {

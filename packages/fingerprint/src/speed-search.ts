@@ -12,10 +12,10 @@ export const UNCHANGED: SpeedVariant = { speedRatio: 1, pitchFollowsSpeed: false
 
 function variants(): SpeedVariant[] {
   const list: SpeedVariant[] = [UNCHANGED]
-  for (let step = 1; step <= 9; step++) {
+  for (let step = 2; step <= 9; step++) {
     for (const sign of [1, -1]) list.push({ speedRatio: 1 + (sign * step) / 200, pitchFollowsSpeed: true })
   }
-  for (const percent of [2, 4]) {
+  for (const percent of [1, 2, 3, 4]) {
     for (const sign of [1, -1])
       list.push({ speedRatio: 1 + (sign * percent) / 100, pitchFollowsSpeed: false })
   }
@@ -55,9 +55,9 @@ export function createDeepSearch(index: CatalogueIndex): DeepSearch {
     const best = new Map<number, SpeedCandidate>()
     for (const variant of SPEED_VARIANTS) {
       mark++
-      histogram.clear()
+      histogram.nextBlock(1)
       fill(histogram, seen, mark, peaks, [fromFrame, toFrame], variant)
-      for (const candidate of histogram.candidates(1)) {
+      for (const candidate of histogram.candidates()) {
         const known = best.get(candidate.recording.recordingNumber)
         if (!known || candidate.logChance < known.logChance) {
           best.set(candidate.recording.recordingNumber, { ...candidate, variant })
