@@ -2,11 +2,11 @@ import { formatAmount } from '@fieldfare/royalty'
 import { formatNumbers, type PlayNumbers } from '../number-plays.ts'
 import { type StatementDocument, type StatementLine, type StatementSection } from '../statement-document.ts'
 import { formatCoverage, formatDuration, formatPercent, nameRight } from '../statement-words.ts'
-import { type Canvas } from './canvas.ts'
+import { type Canvas, type StyledText } from './canvas.ts'
 import { drawPartHeading, drawStationHeading } from './draw-heading.ts'
 import { WIDTH } from './page-layout.ts'
 import { body, code, figure, small, strong, total } from './styles.ts'
-import { type Column, drawTable } from './table.ts'
+import { type Column, drawTable, GUTTER } from './table.ts'
 
 const NUMBER_WIDTH = 30
 const RIGHT_WIDTH = 56
@@ -16,6 +16,9 @@ const SHARE_WIDTH = 68
 const AMOUNT_WIDTH = 76
 const TITLE_WIDTH =
   WIDTH - NUMBER_WIDTH - RIGHT_WIDTH - PLAYS_WIDTH - CREDITED_WIDTH - SHARE_WIDTH - AMOUNT_WIDTH
+
+/** The width of every letter of the monospaced face, in parts of the type size. */
+const MONO_ADVANCE = 0.6
 
 /** A line under its number, or the sum that closes a station. */
 type LineRow =
@@ -90,11 +93,17 @@ function column(
 function describeLine(line: StatementLine, numbers: PlayNumbers): ReturnType<Column<LineRow>['cell']> {
   const own = numbers.of(line)
   const plays = `${own.length === 1 ? 'play' : 'plays'} ${formatNumbers(own)}`
-  return [
-    body(line.title),
-    small(line.creators),
-    code(line.code === null ? plays : `${line.code} · ${plays}`),
-  ].filter(({ text }) => text !== '')
+  return [body(line.title), small(line.creators), ...codesOf(line.code, plays)].filter(
+    ({ text }) => text !== '',
+  )
+}
+
+/** Code and plays share a line where they fit, so that a range of plays is not broken in two. */
+function codesOf(lineCode: string | null, plays: string): readonly StyledText[] {
+  if (lineCode === null) return [code(plays)]
+  const together = code(`${lineCode} · ${plays}`)
+  const fits = together.text.length * together.size * MONO_ADVANCE <= TITLE_WIDTH - GUTTER
+  return fits ? [together] : [code(lineCode), code(plays)]
 }
 
 function creditedTime({ creditedMs }: StatementLine): string {

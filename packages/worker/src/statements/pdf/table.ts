@@ -21,7 +21,8 @@ export type Table<Row> = {
   readonly totals?: readonly Row[]
 }
 
-const GUTTER = 10
+/** The space that keeps a column's text from the next column. */
+export const GUTTER = 10
 const HEADING_PADDING = 3.5
 const ROW_PADDING = 3.5
 const HEADING: TextStyle = { face: 'sansStrong', size: 8, colour: COLOURS.slate }
