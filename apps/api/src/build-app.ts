@@ -2,12 +2,16 @@ import cookieParser from 'cookie-parser'
 import express, { type Express, type Router } from 'express'
 import { createAdministrationRouter } from './features/administration/administration.router.ts'
 import { createAuthRouter } from './features/auth/auth.router.ts'
+import { createCatalogueRouter } from './features/catalogue/catalogue.router.ts'
 import { createDocumentationRouter } from './features/documentation/documentation.router.ts'
 import { createHealthRouter } from './features/health/health.router.ts'
 import { createDetectionsRouter } from './features/detections/detections.router.ts'
 import { createPlaysRouter } from './features/plays/plays.router.ts'
 import { createOverviewRouter } from './features/overview/overview.router.ts'
 import { createDistributionsRouter } from './features/distributions/distributions.router.ts'
+import { createStationsRouter } from './features/stations/stations.router.ts'
+import { createStatementsRouter } from './features/statements/statements.router.ts'
+import { createEventsRouter } from './features/events/events.router.ts'
 import type { Dependencies } from './http/dependencies.ts'
 import { requestContext } from './http/request-context.ts'
 import { provideContext } from './middleware/context.ts'
@@ -23,10 +27,14 @@ const features: readonly ((dependencies: Dependencies) => Router)[] = [
   createDocumentationRouter,
   createAuthRouter,
   createAdministrationRouter,
+  createStationsRouter,
+  createCatalogueRouter,
   createDetectionsRouter,
   createPlaysRouter,
   createOverviewRouter,
   createDistributionsRouter,
+  createStatementsRouter,
+  createEventsRouter,
 ]
 
 /** Puts the application together. It neither listens nor connects: `server.ts` does. */
