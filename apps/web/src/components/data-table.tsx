@@ -20,6 +20,12 @@ export type TableAnswer<Row> = {
   refetch: () => unknown
 }
 
+/** What a table needs of useListSearch, whatever its filters are called. */
+export type TableSearch = Pick<
+  ListSearch,
+  'page' | 'pageSize' | 'sort' | 'hasFilters' | 'setPage' | 'setPageSize' | 'setSort' | 'clearFilters'
+>
+
 export type DataTableProps<Row extends RowData> = {
   /** Names the remembered column choice; unique in the application. */
   name: string
@@ -34,7 +40,7 @@ export type DataTableProps<Row extends RowData> = {
   query: TableAnswer<Row>
   rowId: (row: Row) => string
   /** From useListSearch; left out for short lists that come whole. */
-  search?: ListSearch
+  search?: TableSearch
   selection?: RowSelection
   /** Shown while rows are selected. */
   bulkActions?: ReactNode
@@ -150,7 +156,7 @@ function NothingListed({
   noun,
   empty,
 }: {
-  search: ListSearch | undefined
+  search: TableSearch | undefined
   noun: string
   empty: ReactNode
 }) {

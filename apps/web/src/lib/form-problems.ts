@@ -1,8 +1,15 @@
 import type { FieldError } from '@fieldfare/contracts'
-import type { FieldValues, Path, UseFormReturn } from 'react-hook-form'
+import type { FieldValues, Path } from 'react-hook-form'
 
 /** The parts of a form this needs, so that it can be tested without one. */
-export type ErrorTarget<Values extends FieldValues> = Pick<UseFormReturn<Values>, 'getValues' | 'setError'>
+export type ErrorTarget<Values extends FieldValues> = {
+  getValues: () => Values
+  setError: (
+    name: Path<Values>,
+    error: { type: string; message: string },
+    options: { shouldFocus: boolean },
+  ) => void
+}
 
 function isPath<Values extends FieldValues>(values: Values, path: string): path is Path<Values> {
   let here: unknown = values
