@@ -12,6 +12,7 @@ import { createDistributionsRouter } from './features/distributions/distribution
 import { createStationsRouter } from './features/stations/stations.router.ts'
 import { createStatementsRouter } from './features/statements/statements.router.ts'
 import { createEventsRouter } from './features/events/events.router.ts'
+import { createDisputesRouter } from './features/disputes/disputes.router.ts'
 import type { Dependencies } from './http/dependencies.ts'
 import { requestContext } from './http/request-context.ts'
 import { provideContext } from './middleware/context.ts'
@@ -35,6 +36,7 @@ const features: readonly ((dependencies: Dependencies) => Router)[] = [
   createDistributionsRouter,
   createStatementsRouter,
   createEventsRouter,
+  createDisputesRouter,
 ]
 
 /** Puts the application together. It neither listens nor connects: `server.ts` does. */

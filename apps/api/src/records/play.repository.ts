@@ -85,3 +85,13 @@ export function selectPlays(connection: Connection, scope: Scope): Knex.QueryBui
     )
   return restrictPlays(query, scope)
 }
+
+async function firstRow<Row>(query: PromiseLike<Row[]>): Promise<Row | null> {
+  const [row] = await query
+  return row ?? null
+}
+
+/** One play in scope. */
+export async function findPlay(connection: Connection, scope: Scope, id: PlayId): Promise<PlayRow | null> {
+  return firstRow<PlayRow>(selectPlays(connection, scope).where('plays.id', id))
+}
