@@ -9,6 +9,7 @@ import { createDetectionsRouter } from './features/detections/detections.router.
 import { createPlaysRouter } from './features/plays/plays.router.ts'
 import { createOverviewRouter } from './features/overview/overview.router.ts'
 import { createDistributionsRouter } from './features/distributions/distributions.router.ts'
+import { createReferenceAudioRouter } from './features/reference-audio/reference-audio.router.ts'
 import { createStationsRouter } from './features/stations/stations.router.ts'
 import { createStatementsRouter } from './features/statements/statements.router.ts'
 import { createEventsRouter } from './features/events/events.router.ts'
@@ -30,6 +31,7 @@ const features: readonly ((dependencies: Dependencies) => Router)[] = [
   createAdministrationRouter,
   createStationsRouter,
   createCatalogueRouter,
+  createReferenceAudioRouter,
   createDetectionsRouter,
   createPlaysRouter,
   createOverviewRouter,
