@@ -39,8 +39,9 @@ describe('decodeMono', () => {
     expect(Math.abs(samples.length / WANTED_HZ - SECONDS)).toBeLessThan(0.03)
     const { lag, fit } = lagOf(samples, expected, 400)
     expect(Math.abs(lag)).toBeLessThanOrEqual(MILLISECONDS_3)
-    // What a lossy codec adds to noise, the hardest signal there is, stays in the waveform.
-    expect(fit).toBeGreaterThan(LOSSLESS.has(format) ? 0.999 : 0.95)
+    // Two good resamplers still differ between 3.6 and 4.4 kHz, where one rolls off; and a lossy codec changes noise,
+    // the hardest signal there is.
+    expect(fit).toBeGreaterThan(LOSSLESS.has(format) ? 0.995 : 0.95)
   })
 
   it.each(FORMATS.filter(([format]) => format !== 'm4a'))(
