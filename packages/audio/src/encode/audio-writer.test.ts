@@ -14,7 +14,10 @@ describe('writeAudioFile', () => {
     await writeAudioFile(file('tone.wav'), samples, RATE_HZ, { format: 'wav' })
     const read = await readAll(file('tone.wav'), { sampleRateHz: RATE_HZ, decoder: 'audio-decode' })
     expect(read.samples.length).toBe(samples.length)
-    const error = read.samples.reduce((most, value, i) => Math.max(most, Math.abs(value - (samples[i] ?? 0))), 0)
+    const error = read.samples.reduce(
+      (most, value, i) => Math.max(most, Math.abs(value - (samples[i] ?? 0))),
+      0,
+    )
     expect(error).toBeLessThan(1.1 / 32_768)
     expect((await stat(file('tone.wav'))).size).toBe(44 + 2 * samples.length)
   })
@@ -49,7 +52,10 @@ describe('writeAudioFile', () => {
 
 describe('renderSpeech', () => {
   it('speaks at a steady level', async () => {
-    const speech = await renderSpeech('Good morning, and welcome back.', { name: 'en-gb', sampleRateHz: RATE_HZ })
+    const speech = await renderSpeech('Good morning, and welcome back.', {
+      name: 'en-gb',
+      sampleRateHz: RATE_HZ,
+    })
     if (speech === null) throw new Error('espeak-ng is needed for this test')
     expect(speech.length / RATE_HZ).toBeGreaterThan(1)
     expect(rmsDb(speech)).toBeGreaterThan(-24)
