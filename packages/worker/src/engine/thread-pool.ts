@@ -33,10 +33,10 @@ export type ThreadPool = {
   close: () => Promise<void>
 }
 
-const THREAD_FILE = new URL('./thread.ts', import.meta.url)
+const THREAD_FILE = new URL('./thread-entry.mjs', import.meta.url)
 
 function startThread(): PooledThread {
-  return { worker: new Worker(THREAD_FILE, { execArgv: ['--import', 'tsx'] }), appliedChanges: 0 }
+  return { worker: new Worker(THREAD_FILE), appliedChanges: 0 }
 }
 
 type Exchange = { onProgress: (doneSeconds: number) => void; signal: AbortSignal | null }

@@ -14,6 +14,11 @@ function printedCode({ right, code }: RenderedLine): string | null {
   return right === 'works' ? `ISWC ${formatIswc(code)}` : `ISRC ${formatIsrc(code)}`
 }
 
+/** Twelve figures name a play among all a society will ever have, and fit a printed column. */
+function playReference(playId: string): string {
+  return playId.replaceAll('-', '').slice(0, 12)
+}
+
 function describeLine(line: RenderedLine, contents: StatementContents, timeZone: string): StatementLine {
   return {
     title: line.title,
@@ -26,7 +31,7 @@ function describeLine(line: RenderedLine, contents: StatementContents, timeZone:
     plays: contents.plays
       .filter(({ lineNumber }) => lineNumber === line.lineNumber)
       .map((play) => ({
-        reference: play.playId,
+        reference: playReference(play.playId),
         localStart: DateTime.fromISO(play.startedAt, { zone: timeZone }).toFormat("yyyy-LL-dd'T'HH:mm:ss"),
         recordingTitle: play.recordingTitle,
         durationSeconds: play.durationSeconds,
