@@ -27,5 +27,10 @@ export {
   type IndexSegment,
   type SegmentBuffers,
 } from './index-segment.ts'
-export { createLogAnalyser, type LogAnalyser, type LogAnalyserOptions } from './log-analyser.ts'
+export {
+  createLogAnalyser,
+  type AnalysisTimings,
+  type LogAnalyser,
+  type LogAnalyserOptions,
+} from './log-analyser.ts'
 export { ENGINE_VERSION, engineParameters } from './parameters.ts'

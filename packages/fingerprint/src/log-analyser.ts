@@ -13,7 +13,12 @@ import { createWindowSearch, WINDOW_BLOCKS } from './window-search.ts'
 export type LogAnalyserOptions = {
   readonly index: CatalogueIndex
   readonly thresholds?: DetectionThresholds
+  /** A clock in milliseconds, for {@link LogAnalyser.timings}; without one they stay zero. */
+  readonly now?: () => number
 }
+
+/** Milliseconds spent on spectra and peaks, and on looking them up. */
+export type AnalysisTimings = { readonly analyseMs: number; readonly matchMs: number }
 
 /** Finds the recordings of a catalogue in a log that arrives as a stream. Memory does not grow with its length. */
 export type LogAnalyser = {
@@ -21,6 +26,7 @@ export type LogAnalyser = {
   readonly push: (samples: Float32Array) => Detection[]
   /** Ends the log; returns the rest. */
   readonly finish: () => Detection[]
+  readonly timings: () => AnalysisTimings
 }
 
 const DEEP_SEARCH_BLOCKS = 6
@@ -68,7 +74,7 @@ function createSearches(index: CatalogueIndex, peaks: PeakStore, tracker: Tracke
 
 /** Starts the analysis of one log against the index as it is now. */
 export function createLogAnalyser(options: LogAnalyserOptions): LogAnalyser {
-  const { index, thresholds = defaultThresholds } = options
+  const { index, thresholds = defaultThresholds, now = () => 0 } = options
   const peaks = createPeakStore()
   const picker = createPeakPicker(peaks.add)
   const spectrum = createSpectrumAnalyser(engineParameters.frameSamples, engineParameters.hopSamples)
@@ -77,6 +83,8 @@ export function createLogAnalyser(options: LogAnalyserOptions): LogAnalyser {
   const desk = createClaimDesk(index, thresholds)
   let block = 0
   let sampleCount = 0
+  let analyseMs = 0
+  let matchMs = 0
 
   const workThroughBlock = (): Detection[] => {
     searches.searchWindow(block)
@@ -94,20 +102,37 @@ export function createLogAnalyser(options: LogAnalyserOptions): LogAnalyser {
     return detections
   }
 
+  const timed = (analyse: () => void, match: () => Detection[]): Detection[] => {
+    const start = now()
+    analyse()
+    const analysed = now()
+    const detections = match()
+    analyseMs += analysed - start
+    matchMs += now() - analysed
+    return detections
+  }
+
   return {
     push(samples) {
       sampleCount += samples.length
-      spectrum.push(samples, picker.push)
-      return workThroughUntil(picker.completeFrames())
+      return timed(
+        () => spectrum.push(samples, picker.push),
+        () => workThroughUntil(picker.completeFrames()),
+      )
     },
     finish() {
-      spectrum.finish(picker.push)
-      picker.finish()
-      const last = picker.completeFrames()
-      const detections = workThroughUntil(last)
-      while (block * BLOCK_FRAMES < last) detections.push(...workThroughBlock())
-      desk.take(tracker.finish())
-      return [...detections, ...desk.settle(Infinity, sampleCount / engineParameters.sampleRateHz)]
+      const completePeaks = (): void => {
+        spectrum.finish(picker.push)
+        picker.finish()
+      }
+      return timed(completePeaks, () => {
+        const last = picker.completeFrames()
+        const detections = workThroughUntil(last)
+        while (block * BLOCK_FRAMES < last) detections.push(...workThroughBlock())
+        desk.take(tracker.finish())
+        return [...detections, ...desk.settle(Infinity, sampleCount / engineParameters.sampleRateHz)]
+      })
     },
+    timings: () => ({ analyseMs, matchMs }),
   }
 }
