@@ -32,7 +32,6 @@ const rows: Row[] = [
 type Fetch = (query: ListSearch['query']) => Promise<Answer>
 
 function listQuery(query: ListSearch['query'], fetchRows: Fetch) {
-  // eslint-disable-next-line @tanstack/query/exhaustive-deps -- each test makes its own client and its own answer
   return queryOptions({ queryKey: ['list', query], queryFn: () => fetchRows(query), staleTime: 0 })
 }
 

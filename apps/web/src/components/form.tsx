@@ -3,7 +3,7 @@ import { useState, type ReactNode } from 'react'
 import { get, useForm, type FieldValues, type UseFormProps, type UseFormReturn } from 'react-hook-form'
 import type { z } from 'zod'
 import { isApiProblem } from '../lib/api-problem.ts'
-import { applyFieldErrors } from '../lib/form-problems.ts'
+import { placeFieldErrors } from '../lib/form-problems.ts'
 import { FieldErrorsContext } from './field-shell.tsx'
 import { ErrorState } from './states.tsx'
 import { UnsavedGuard } from './unsaved-guard.tsx'
@@ -45,7 +45,9 @@ export function Form<Input extends FieldValues, Output>({
       await onSubmit(values)
     } catch (error) {
       const fieldErrors = isApiProblem(error) ? error.fieldErrors : []
-      const placed = applyFieldErrors(form, fieldErrors)
+      const placed = placeFieldErrors(form.getValues(), fieldErrors, (name, message, shouldFocus) =>
+        form.setError(name, { type: 'server', message }, { shouldFocus }),
+      )
       if (placed < fieldErrors.length || fieldErrors.length === 0) setFailure(error)
       // A refused form is not submitted: the guard must go on watching it.
       if (placed === 0) form.setError('root.server', { type: 'server' })

@@ -1,34 +1,32 @@
 import { describe, expect, it, vi } from 'vitest'
-import { applyFieldErrors } from './form-problems.ts'
+import { placeFieldErrors } from './form-problems.ts'
 
-function formWith(values: { name: string; shares: { percent: string }[] }) {
-  return { getValues: vi.fn(() => values), setError: vi.fn() }
-}
+describe('placeFieldErrors', () => {
+  it('hands each complaint to its field, nested ones too, and focuses the first', () => {
+    const place = vi.fn()
+    const values = { name: '', shares: [{ percent: '50' }, { percent: '60' }] }
 
-describe('applyFieldErrors', () => {
-  it('puts each complaint at its field, nested ones too, and focuses the first', () => {
-    const form = formWith({ name: '', shares: [{ percent: '50' }, { percent: '60' }] })
-
-    const placed = applyFieldErrors(form, [
-      { path: 'shares.1.percent', message: 'The shares make more than 100 %.' },
-      { path: 'body.name', message: 'Name is needed.' },
-    ])
+    const placed = placeFieldErrors(
+      values,
+      [
+        { path: 'shares.1.percent', message: 'The shares make more than 100 %.' },
+        { path: 'body.name', message: 'Name is needed.' },
+      ],
+      place,
+    )
 
     expect(placed).toBe(2)
-    expect(form.setError.mock.calls).toEqual([
-      [
-        'shares.1.percent',
-        { type: 'server', message: 'The shares make more than 100 %.' },
-        { shouldFocus: true },
-      ],
-      ['name', { type: 'server', message: 'Name is needed.' }, { shouldFocus: false }],
+    expect(place.mock.calls).toEqual([
+      ['shares.1.percent', 'The shares make more than 100 %.', true],
+      ['name', 'Name is needed.', false],
     ])
   })
 
   it('leaves complaints about fields the form does not have to the caller', () => {
-    const form = formWith({ name: '', shares: [] })
+    const place = vi.fn()
+    const errors = [{ path: 'shares.0.percent', message: 'Too much.' }]
 
-    expect(applyFieldErrors(form, [{ path: 'shares.0.percent', message: 'Too much.' }])).toBe(0)
-    expect(form.setError).not.toHaveBeenCalled()
+    expect(placeFieldErrors({ name: '', shares: [] }, errors, place)).toBe(0)
+    expect(place).not.toHaveBeenCalled()
   })
 })

@@ -1,16 +1,6 @@
 import type { FieldError } from '@fieldfare/contracts'
 import type { FieldValues, Path } from 'react-hook-form'
 
-/** The parts of a form this needs, so that it can be tested without one. */
-export type ErrorTarget<Values extends FieldValues> = {
-  getValues: () => Values
-  setError: (
-    name: Path<Values>,
-    error: { type: string; message: string },
-    options: { shouldFocus: boolean },
-  ) => void
-}
-
 function isPath<Values extends FieldValues>(values: Values, path: string): path is Path<Values> {
   let here: unknown = values
   for (const key of path.split('.')) {
@@ -21,20 +11,20 @@ function isPath<Values extends FieldValues>(values: Values, path: string): path 
 }
 
 /**
- * Puts the server's complaints at the fields they name and focuses the first.
+ * Finds the field of each of the server's complaints and hands it on, the first with the wish to be focused.
  * Returns how many found a field; the rest must be told elsewhere.
  */
-export function applyFieldErrors<Values extends FieldValues>(
-  form: ErrorTarget<Values>,
+export function placeFieldErrors<Values extends FieldValues>(
+  values: Values,
   fieldErrors: readonly FieldError[],
+  place: (name: Path<Values>, message: string, shouldFocus: boolean) => void,
 ): number {
-  const values = form.getValues()
   let placed = 0
   for (const { path, message } of fieldErrors) {
     // The server says where in the request a value stood; the form knows only what is in the body.
     const name = path.replace(/^body\./, '')
     if (!isPath(values, name)) continue
-    form.setError(name, { type: 'server', message }, { shouldFocus: placed === 0 })
+    place(name, message, placed === 0)
     placed += 1
   }
   return placed
