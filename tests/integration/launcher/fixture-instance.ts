@@ -1,5 +1,5 @@
 import { type ChildProcess, spawn } from 'node:child_process'
-import { cp, readdir, readFile, symlink } from 'node:fs/promises'
+import { chmod, cp, readdir, readFile, symlink } from 'node:fs/promises'
 import { join } from 'node:path'
 
 import { REPOSITORY_DIRECTORY } from '@fieldfare/launcher'
@@ -26,6 +26,8 @@ export type StartedInstance = {
 
 export async function makeCheckout(): Promise<Checkout> {
   const root = await temporaryDirectory('checkout')
+  // As an ordinary checkout has it: the user postgres, as whom root runs PostgreSQL, can pass through.
+  await chmod(root, 0o755)
   await cp(join(import.meta.dirname, 'checkout'), root, { recursive: true })
   await cp(join(REPOSITORY_DIRECTORY, 'packages/launcher'), join(root, 'packages/launcher'), {
     recursive: true,

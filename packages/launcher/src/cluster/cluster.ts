@@ -1,4 +1,4 @@
-import { mkdir, rm } from 'node:fs/promises'
+import { chmod, mkdir, rm } from 'node:fs/promises'
 
 import type { RunningProcess } from '../processes.ts'
 import { type Durability, startPostgres } from './postgres.ts'
@@ -29,7 +29,8 @@ export type Cluster = {
  */
 export async function startCluster({ directory, durability }: ClusterOptions): Promise<Cluster> {
   // The user postgres must be able to pass through; every file in it guards itself.
-  await mkdir(directory, { recursive: true, mode: 0o711 })
+  await mkdir(directory, { recursive: true })
+  await chmod(directory, 0o711)
   const postgres = await startPostgres(directory, durability)
   const redis = await startRedis(directory).catch(async (error: unknown) => {
     await postgres.stop()

@@ -1,4 +1,4 @@
-import { readFile, rm, writeFile } from 'node:fs/promises'
+import { chmod, readFile, rm, writeFile } from 'node:fs/promises'
 import { join } from 'node:path'
 
 import { z } from 'zod'
@@ -65,6 +65,8 @@ export async function seedDemoOnce({
     }
     throw error
   }
+  // A demo without sign-ins is a demo all the same.
+  await chmod(data.demoSignInsFile, 0o600).catch(() => undefined)
   await writeFile(data.demoStateFile, 'ready\n')
 }
 
