@@ -9,6 +9,7 @@ import { createDetectionsRouter } from './features/detections/detections.router.
 import { createPlaysRouter } from './features/plays/plays.router.ts'
 import { createOverviewRouter } from './features/overview/overview.router.ts'
 import { createDistributionsRouter } from './features/distributions/distributions.router.ts'
+import { createLogsRouter } from './features/logs/logs.router.ts'
 import { createReferenceAudioRouter } from './features/reference-audio/reference-audio.router.ts'
 import { createStationsRouter } from './features/stations/stations.router.ts'
 import { createStatementsRouter } from './features/statements/statements.router.ts'
@@ -32,6 +33,7 @@ const features: readonly ((dependencies: Dependencies) => Router)[] = [
   createStationsRouter,
   createCatalogueRouter,
   createReferenceAudioRouter,
+  createLogsRouter,
   createDetectionsRouter,
   createPlaysRouter,
   createOverviewRouter,
