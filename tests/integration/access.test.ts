@@ -61,7 +61,7 @@ describe.each(endpoints)('$id ($method $path)', (endpoint) => {
     expect(problem?.code).not.toBe('internal-error')
   })
 
-  it(endpoint.access === 'public' ? 'is open to everyone' : 'asks strangers to sign in', async () => {
+  it('is open to strangers only where it is public', async () => {
     const { status, problem } = await probe(endpoint, api.anonymous())
     if (endpoint.access !== 'public') expect(problem).toMatchObject({ status: 401, code: 'not-signed-in' })
     // Exchanging a refresh token needs one, which a stranger has not.

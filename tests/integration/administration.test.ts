@@ -75,7 +75,12 @@ describe('users', () => {
 
   it('are told at the field that a scope is needed or gone', async () => {
     const { client } = await api.signInAs('admin')
-    const body = { email: 'scope@example.org', name: 'Scope', role: 'uploader', stationIds: [] as string[] }
+    const body = {
+      email: 'scope@example.org',
+      name: 'Scope',
+      role: 'uploader',
+      stationIds: new Array<string>(),
+    }
     expect((await client.problem(inviteUser, { body })).fieldErrors).toMatchObject([{ path: 'stationIds' }])
     const gone = { ...body, stationIds: ['00000000-0000-4000-8000-000000000000'] }
     expect((await client.problem(inviteUser, { body: gone })).fieldErrors).toMatchObject([
@@ -98,7 +103,8 @@ describe('the system', () => {
   it('tells of database, queue, storage and jobs', async () => {
     const { client } = await api.signInAs('admin')
     const health = await client.json(getSystemHealth)
-    expect(health.database).toMatchObject({ ok: true, version: expect.stringMatching(/^15/) })
+    expect(health.database.ok).toBe(true)
+    expect(health.database.version).toMatch(/^15/)
     expect(health.redis.ok).toBe(true)
     expect(health.storage).toMatchObject({ kind: 'disk', ok: true, objects: 0 })
     expect(health.queues.map((queue) => queue.kind)).toContain('send-mail')
