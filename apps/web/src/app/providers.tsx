@@ -7,7 +7,7 @@ import type { createAppRouter } from './router.tsx'
 
 type ProvidersProps = { queryClient: QueryClient; router: ReturnType<typeof createAppRouter> }
 
-const openPages = ['/sign-in', '/forgotten-password', '/reset-password', '/invitation']
+const openPages = ['/sign-in', '/forgotten-password', '/password-reset', '/invitation']
 
 export function Providers({ queryClient, router }: ProvidersProps) {
   useEffect(

@@ -1,6 +1,10 @@
 import '@testing-library/jest-dom/vitest'
-import { cleanup } from '@testing-library/react'
+import { cleanup, configure } from '@testing-library/react'
 import { afterEach, vi } from 'vitest'
+
+// A busy machine is no reason for a test to fail; a page that never answers still is.
+configure({ asyncUtilTimeout: 10_000 })
+vi.setConfig({ testTimeout: 30_000 })
 
 // jsdom draws nothing, measures nothing and has no dialogs: these are the pieces components rely on.
 HTMLCanvasElement.prototype.getContext = () => null

@@ -8,7 +8,7 @@ export const authRoutes: RouteObject[] = [
     lazy: async () => ({ Component: (await import('./forgotten-password-page.tsx')).ForgottenPasswordPage }),
   },
   {
-    path: 'reset-password',
+    path: 'password-reset',
     lazy: async () => ({ Component: (await import('./reset-password-page.tsx')).ResetPasswordPage }),
   },
   {
