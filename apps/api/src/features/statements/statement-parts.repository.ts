@@ -37,21 +37,13 @@ export async function readStatementParts(connection: Connection, id: StatementId
     .where({ statement_id: id })
     .groupBy('right')
     .select<StatementParts['rights']>('right', connection.raw('sum(amount_minor)::bigint as "netMinor"'))
-  const stations = await connection('statement_lines')
-    .join('statements', 'statements.id', 'statement_lines.statement_id')
-    .join('distribution_stations', (join) =>
-      join
-        .on('distribution_stations.distribution_id', 'statements.distribution_id')
-        .andOn('distribution_stations.station_id', 'statement_lines.station_id'),
-    )
-    .join('stations', 'stations.id', 'statement_lines.station_id')
+  const stations = await connection('statement_stations')
+    .join('stations', 'stations.id', 'statement_stations.station_id')
     .where({ statement_id: id })
-    .groupBy('stations.id', 'distribution_stations.held_ms', 'distribution_stations.expected_ms')
     .orderBy('stations.call_name')
     .select<StatementParts['stations']>(
-      { heldMs: 'distribution_stations.held_ms', expectedMs: 'distribution_stations.expected_ms' },
+      { netMinor: 'net_minor', heldMs: 'held_ms', expectedMs: 'expected_ms' },
       connection.raw(`${stationReferenceSql} as station`),
-      connection.raw('sum(statement_lines.amount_minor)::bigint as "netMinor"'),
     )
   const holdbacks = await connection('statement_holdbacks')
     .join('distribution_holdbacks', 'distribution_holdbacks.id', 'statement_holdbacks.holdback_id')
