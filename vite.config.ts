@@ -16,7 +16,11 @@ export default defineConfig({
         test: {
           name: 'unit',
           environment: 'node',
-          include: ['packages/*/src/**/*.test.ts', 'apps/api/src/**/*.test.ts', 'tests/architecture/**/*.test.ts'],
+          include: [
+            'packages/*/src/**/*.test.ts',
+            'apps/api/src/**/*.test.ts',
+            'tests/architecture/**/*.test.ts',
+          ],
         },
       },
       {
