@@ -13,7 +13,7 @@ import { scopeOf, type Actor, type Scope } from '@fieldfare/database'
 import { Router, type Request, type Response } from 'express'
 import type { Logger } from 'pino'
 import type { z } from 'zod'
-import { AppError, fieldRefused, validationFailed } from './app-error.ts'
+import { AppError, validationFailed } from './app-error.ts'
 import { cookieJar, type CookieJar } from './cookie-jar.ts'
 import { openEventStream, type EventStream } from './event-stream.ts'
 import { sendFile, type FileAnswer } from './file-answer.ts'
@@ -93,8 +93,11 @@ function collect(schema: z.ZodType | undefined, value: unknown, errors: FieldErr
 }
 
 /** Checks all parts before complaining, since a form needs every complaint at once. */
-function parseParts(endpoint: Endpoint, request: Request) {
+function parseParts(endpoint: Endpoint, request: Request, file: UploadedFile | null) {
   const errors: FieldError[] = []
+  if (endpoint.file !== undefined && file === null) {
+    errors.push({ path: endpoint.file.field, message: 'Choose a file.' })
+  }
   const body: unknown = request.body ?? {}
   const parts = {
     params: collect(endpoint.params, request.params, errors),
@@ -190,9 +193,7 @@ export function route<E extends Endpoint>(endpoint: E, handler: Handler<E>): Rou
           limitBytes: context.uploadLimitBytes,
         })
       } else if (endpoint.body !== undefined) await readJsonBody(request, response)
-      const parts = parseParts(endpoint, request)
-      if (endpoint.file !== undefined && file === null)
-        throw fieldRefused(endpoint.file.field, 'Choose a file.')
+      const parts = parseParts(endpoint, request, file)
       const input: LooseInput = {
         actor: signedIn?.actor ?? null,
         sessionId: signedIn?.sessionId ?? null,
