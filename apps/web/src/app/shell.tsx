@@ -30,7 +30,7 @@ export function Shell() {
         Skip to the page
       </a>
       <div className="md:grid md:grid-cols-[15rem_minmax(0,1fr)]">
-        <div className="no-print border-hairline bg-band max-md:sticky max-md:top-0 max-md:z-30 max-md:border-b md:border-r">
+        <header className="no-print border-hairline bg-band max-md:sticky max-md:top-0 max-md:z-30 max-md:border-b md:border-r">
           <div className="md:sticky md:top-0 md:flex md:h-dvh md:flex-col md:overflow-y-auto">
             <div className="flex items-center justify-between px-4 py-2.5 md:px-6 md:pt-6 md:pb-5">
               <Link to="/" aria-label="Fieldfare, start page">
@@ -59,7 +59,7 @@ export function Shell() {
               <WhoIsHere />
             </div>
           </div>
-        </div>
+        </header>
         <PageFrame />
       </div>
     </SocietyContext>
