@@ -5,3 +5,4 @@ export { type LogEntry, type RecordingLogger, silentLogger } from './silent-logg
 export { temporaryDirectory } from './temporary-directory.ts'
 export { createTestDatabase, type TestDatabase } from './test-database.ts'
 export { type TestRedis, testRedis } from './test-redis.ts'
+export { webDirectory } from './web-directory.ts'

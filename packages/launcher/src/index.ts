@@ -11,5 +11,6 @@ export {
   startProcess,
 } from './processes.ts'
 export { REPOSITORY_DIRECTORY } from './repository-directory.ts'
+export { buildWeb, type WebBuildOptions } from './web-build.ts'
 export { type WaitOptions, WaitTimeoutError, waitUntil } from './wait-until.ts'
 export { startTestCluster, TEMPLATE_DATABASE, type TestCluster } from './test-cluster/test-cluster.ts'
