@@ -1,4 +1,4 @@
-import { readFileSync } from 'node:fs'
+import { existsSync, readFileSync } from 'node:fs'
 import { exit } from 'node:process'
 
 /*
@@ -18,6 +18,8 @@ function isInstalled() {
     // npm leaves out optional packages made for other systems.
     if (present === undefined)
       return wanted.optional === true || wanted.devOptional === true || wanted.peer === true
+    // Those in a workspace's own folder are looked for, since the record is kept in the root's folder only.
+    if (!path.startsWith('node_modules/') && !existsSync(path)) return false
     return present.version === wanted.version && present.integrity === wanted.integrity
   })
 }
