@@ -10,7 +10,9 @@ export function DefinitionList({ items }: { items: readonly (Definition | null)[
         item === null ? null : (
           // The order of the facts of a thing never changes while it is shown.
           <Fragment key={index}>
-            <dt className="border-hairline pt-2 overline-label sm:border-t sm:py-2 sm:pr-6">{item.term}</dt>
+            <dt className="border-hairline pt-2 overline-label sm:border-b sm:py-2 sm:pr-6 sm:leading-6">
+              {item.term}
+            </dt>
             <dd className="min-w-0 border-b border-hairline pb-2 break-words sm:py-2">{item.value}</dd>
           </Fragment>
         ),
@@ -30,9 +32,7 @@ export function KeyFigures({ items }: { items: readonly KeyFigure[] }) {
           key={item.label}
           className="grow border-hairline px-4 py-3 not-first:border-l max-sm:nth-[odd]:border-l-0"
         >
-          <dt className="border-hairline pt-2 overline-label sm:border-b sm:py-2 sm:pr-6 sm:leading-6">
-            {item.label}
-          </dt>
+          <dt className="overline-label">{item.label}</dt>
           <dd className="mt-0.5 font-serif text-2xl leading-tight [&_.figures]:font-[inherit] [&_.figures]:text-[1em]">
             {item.value}
           </dd>

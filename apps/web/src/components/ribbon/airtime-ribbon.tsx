@@ -107,7 +107,10 @@ function FocusLine({
   count: number
   timeZone: string
 }) {
-  const summary = count === 0 ? 'No plays in this stretch.' : `${count} stretches can be opened.`
+  const summary =
+    count === 0
+      ? 'No plays in this stretch.'
+      : `${count} stretches can be opened. Drag to move, Ctrl and the wheel to zoom, arrow keys from one to the next.`
   return (
     <p aria-live="polite" className="min-h-6 text-[0.95rem]">
       {focused === null ? <span className="text-slate">{summary}</span> : describeSpan(focused, timeZone)}
