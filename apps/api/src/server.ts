@@ -5,6 +5,7 @@ import { Redis } from 'ioredis'
 import { pino, type Logger } from 'pino'
 import { buildApp } from './build-app.ts'
 import type { Dependencies } from './http/dependencies.ts'
+import { describeError } from './http/describe-error.ts'
 import { createEventHub } from './http/event-hub.ts'
 
 /** Requests under way get this long to end before their connections are cut; it must be under the launcher's 10 s. */
@@ -22,6 +23,7 @@ export function createApiLogger(configuration: Configuration): Logger {
   return pino({
     level: configuration.logLevel,
     base: { service: 'api' },
+    serializers: { err: describeError },
     redact: {
       paths: [
         '*.password',
