@@ -1,7 +1,8 @@
 import { createHitCollector, mergeHits, type AlignedHits } from './aligned-hits.ts'
-import { createOffsetBackground } from './background.ts'
+import { createOffsetBackground, type BackgroundLaw } from './background.ts'
+import { BLOCK_FRAMES, type BlockLandmarks } from './block-landmarks.ts'
 import type { PlacedRecording } from './catalogue-index.ts'
-import { endOfHash, firstSlotAt, startOfHash } from './index-segment.ts'
+import { firstSlotAt } from './index-segment.ts'
 import { bestSpan, type Span } from './span.ts'
 import { logOverdispersedTail } from './statistics.ts'
 
@@ -22,10 +23,8 @@ export type AlignmentEvidence = {
 export type Alignment = {
   readonly recording: PlacedRecording
   readonly variant: SpeedVariant
-  /** Looks a landmark of the log up on the alignment; the landmarks of one anchor come together. */
-  readonly probe: (hash: number, logFrame: number, targetFrame: number) => void
-  /** Ends a block of probes covering this many frames and follows the drift. */
-  readonly settle: (frames: number) => void
+  /** Looks the landmarks of a block (made for this variant and segment) up on the alignment and follows its drift. */
+  readonly probe: (landmarks: BlockLandmarks) => void
   /** Turns to the blocks before the first one, nearest first; `false` turns back to the newest. */
   readonly setBackward: (isBackward: boolean) => void
   readonly referenceFrameAt: (logFrame: number) => number
@@ -41,6 +40,18 @@ export type Alignment = {
 const TOLERANCE_FRAMES = 3
 /** However common a hash is, it still says this much of what a unique one says. */
 const LOWEST_WEIGHT = 0.2
+
+function evidenceOf(
+  recording: PlacedRecording,
+  variant: SpeedVariant,
+  hits: AlignedHits,
+  { mean, dispersion }: BackgroundLaw,
+  frames: number,
+): AlignmentEvidence {
+  const backgroundPerFrame = mean / frames
+  const dispersionPerFrame = (dispersion - 1) / frames
+  return { recording, variant, hits, backgroundPerFrame, dispersionPerFrame }
+}
 
 /** Starts to follow a recording at an offset (reference frame minus frame of the log brought to speed). */
 export function createAlignment(
@@ -59,14 +70,15 @@ export function createAlignment(
   let lastAnchor = -1
   let probedFrames = 0
 
-  const probe = (hash: number, logFrame: number, targetFrame: number): void => {
-    const start = startOfHash(segment, hash)
-    const end = endOfHash(segment, hash)
-    if (start === end) return
-    let slot = firstSlotAt(positions, start, end, segmentStart)
-    if (slot === end || positions[slot] >= segmentStart + length) return
+  const probeOne = (
+    slot: number,
+    end: number,
+    commonness: number,
+    logFrame: number,
+    targetFrame: number,
+  ): void => {
     // A common hash tells less: it weighs as its information against that of a hash found only once.
-    const weight = Math.max(LOWEST_WEIGHT, 1 - Math.log(end - start) / information)
+    const weight = Math.max(LOWEST_WEIGHT, 1 - Math.log(commonness) / information)
     const predicted = logFrame * current.line.slope + current.line.intercept
     for (; slot < end; slot++) {
       const referenceFrame = positions[slot] - segmentStart
@@ -80,14 +92,22 @@ export function createAlignment(
     }
   }
 
+  const probe = ({ anchorFrames, targetFrames, firstSlots, endSlots }: BlockLandmarks): void => {
+    for (let i = 0; i < anchorFrames.length; i++) {
+      const start = firstSlots[i]
+      const end = endSlots[i]
+      const slot = firstSlotAt(positions, start, end, segmentStart)
+      if (slot === end || positions[slot] >= segmentStart + length) continue
+      probeOne(slot, end, end - start, anchorFrames[i], targetFrames[i])
+    }
+    probedFrames += BLOCK_FRAMES * variant.speedRatio
+    current.followDrift()
+  }
+
   return {
     recording,
     variant,
     probe,
-    settle(frames) {
-      probedFrames += frames
-      current.followDrift()
-    },
     setBackward(isBackward) {
       if (isBackward) backward = createHitCollector(forward.line)
       current = isBackward ? backward : forward
@@ -97,18 +117,15 @@ export function createAlignment(
     drift: () => Math.abs(forward.line.slope - 1),
     hitsSince: forward.countSince,
     hitCount: () => forward.count() + backward.count(),
-    expectedHits: (frames) => (background.law().mean * frames) / Math.max(1, probedFrames),
-    evidence() {
-      const { mean, dispersion } = background.law()
-      const recordedFrames = Math.max(1, probedFrames) / variant.speedRatio
-      return {
+    expectedHits: (frames) => (background.roughMean() * frames) / Math.max(1, probedFrames),
+    evidence: () =>
+      evidenceOf(
         recording,
         variant,
-        hits: mergeHits([backward.hits(variant.speedRatio), forward.hits(variant.speedRatio)]),
-        backgroundPerFrame: mean / recordedFrames,
-        dispersionPerFrame: (dispersion - 1) / recordedFrames,
-      }
-    },
+        mergeHits([backward.hits(variant.speedRatio), forward.hits(variant.speedRatio)]),
+        background.law(),
+        Math.max(1, probedFrames) / variant.speedRatio,
+      ),
   }
 }
 

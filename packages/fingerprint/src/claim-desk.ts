@@ -12,7 +12,8 @@ import { MERGE_GAP_FRAMES, mergeClaims } from './merge-claims.ts'
 import { SECONDS_PER_FRAME } from './parameters.ts'
 import { resolveClaims, type Explained } from './resolve.ts'
 import { SPEED_VARIANTS } from './speed-search.ts'
-import { BLOCK_FRAMES, LOOK_BACK_BLOCKS } from './tracker.ts'
+import { LOOK_BACK_BLOCKS } from './tracker.ts'
+import { BLOCK_FRAMES } from './block-landmarks.ts'
 
 /** Collects what ended alignments claim, and decides between claims once nothing still running can overlap them. */
 export type ClaimDesk = {

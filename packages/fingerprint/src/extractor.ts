@@ -64,8 +64,8 @@ export function createLandmarkExtractor(): LandmarkExtractor {
     },
     drain() {
       const drained = {
-        hashes: Uint32Array.from({ length: hashes.length() }, (_, n) => hashes.get(n)),
-        frames: Uint32Array.from({ length: frames.length() }, (_, n) => frames.get(n)),
+        hashes: Uint32Array.from(hashes.toArray()),
+        frames: Uint32Array.from(frames.toArray()),
       }
       hashes.clear()
       frames.clear()

@@ -3,10 +3,10 @@ export type NumberList = {
   readonly length: () => number
   readonly push: (value: number) => void
   readonly get: (index: number) => number
-  readonly set: (index: number, value: number) => void
   /** Forgets the first `count` values. */
   readonly dropFirst: (count: number) => void
   readonly clear: () => void
+  readonly toArray: () => Float64Array
 }
 
 /** Makes an empty list of double-precision numbers. */
@@ -24,9 +24,6 @@ export function createNumberList(capacity = 256): NumberList {
       values[length++] = value
     },
     get: (index) => values[index],
-    set(index, value) {
-      values[index] = value
-    },
     dropFirst(count) {
       values.copyWithin(0, count, length)
       length -= count
@@ -34,5 +31,6 @@ export function createNumberList(capacity = 256): NumberList {
     clear() {
       length = 0
     },
+    toArray: () => values.slice(0, length),
   }
 }

@@ -7,7 +7,8 @@ import { createPeakStore, type PeakStore } from './peak-store.ts'
 import { createPeakPicker } from './peaks.ts'
 import { createSpectrumAnalyser } from './spectrum.ts'
 import { createDeepSearch, SPEED_VARIANTS, UNCHANGED } from './speed-search.ts'
-import { BLOCK_FRAMES, createTracker, LOOK_BACK_BLOCKS, type Tracker } from './tracker.ts'
+import { createTracker, LOOK_BACK_BLOCKS, type Tracker } from './tracker.ts'
+import { BLOCK_FRAMES } from './block-landmarks.ts'
 import { createWindowSearch, WINDOW_BLOCKS } from './window-search.ts'
 
 export type LogAnalyserOptions = {

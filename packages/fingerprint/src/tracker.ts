@@ -1,11 +1,18 @@
-import { createAlignment, type Alignment, type AlignmentEvidence, type SpeedVariant } from './alignment.ts'
+import {
+  createAlignment,
+  logChanceOf,
+  spanOf,
+  type Alignment,
+  type AlignmentEvidence,
+  type SpeedVariant,
+} from './alignment.ts'
 import type { CatalogueIndex } from './catalogue-index.ts'
-import { pairPeaks } from './landmarks.ts'
+import { BLOCK_FRAMES, createBlockLandmarkSource, type BlockLandmarkSource } from './block-landmarks.ts'
+import { logFalseAlarms } from './detection.ts'
 import type { Candidate } from './offset-histogram.ts'
 import type { PeakStore } from './peak-store.ts'
+import { SPEED_VARIANTS } from './speed-search.ts'
 
-/** Frames of a block, the step in which a log is worked through: about two seconds. */
-export const BLOCK_FRAMES = 64
 /** An alignment just begun looks back this far for its true start, as long as hits come. */
 export const LOOK_BACK_BLOCKS = 50
 const EMPTY_BLOCKS_BACK = 10
@@ -13,7 +20,11 @@ const EMPTY_BLOCKS_BACK = 10
 const PATIENCE_FRAMES = 800
 const PATIENCE_FRAMES_WEAK = 320
 const WEAK_HITS = 40
-const MOST_ALIGNMENTS = 48
+const MOST_ALIGNMENTS = 24
+/** False alarms per hour of log, as strong as a candidate after a closer look, that are worth following. */
+const PROMISING_FALSE_ALARMS = 100
+/** A candidate that was not borne out is not looked at again for this long. */
+const REJECTED_BLOCKS = 3
 /** Candidates this close in offset and speed are the same alignment. */
 const SAME_OFFSET_FRAMES = 8
 const SAME_SPEED = 0.006
@@ -36,20 +47,18 @@ export type Tracker = {
 
 type Running = { readonly alignment: Alignment; firstFrame: number }
 
-function probeBlock(peaks: PeakStore, alignment: Alignment, block: number): void {
-  const options = { ...alignment.variant, maximumRank: 2, fanOut: 12, boundaryMargin: 0.15 }
-  pairPeaks(peaks, block * BLOCK_FRAMES, (block + 1) * BLOCK_FRAMES, options, alignment.probe)
-  alignment.settle(BLOCK_FRAMES * alignment.variant.speedRatio)
+function probeBlock(source: BlockLandmarkSource, alignment: Alignment, block: number): void {
+  alignment.probe(source.of(block, alignment.variant, alignment.recording.segment))
 }
 
 /** Follows an alignment back from the blocks in which it was found; returns the first frame that may belong to it. */
-function lookBack(peaks: PeakStore, alignment: Alignment, fromBlock: number): number {
+function lookBack(source: BlockLandmarkSource, alignment: Alignment, fromBlock: number): number {
   alignment.setBackward(true)
   let firstBlock = fromBlock
   const last = Math.max(0, fromBlock - LOOK_BACK_BLOCKS)
   for (let block = fromBlock - 1; block >= last && firstBlock - block <= EMPTY_BLOCKS_BACK; block--) {
     const before = alignment.hitCount()
-    probeBlock(peaks, alignment, block)
+    probeBlock(source, alignment, block)
     const chance = alignment.expectedHits(BLOCK_FRAMES * alignment.variant.speedRatio)
     if (alignment.hitCount() - before > 1 + 3 * chance) firstBlock = block
   }
@@ -78,6 +87,17 @@ function hasEnded(alignment: Alignment, frame: number): boolean {
   return alignment.hitsSince(scaled - patience) <= 2 + 2 * alignment.expectedHits(patience)
 }
 
+/** Whether the landmarks around the first window bear the candidate out, as far as following it is worth while. */
+function isPromising(alignment: Alignment, totalFrames: number): boolean {
+  const evidence = alignment.evidence()
+  const span = spanOf(evidence)
+  return (
+    span !== null &&
+    logFalseAlarms(logChanceOf(evidence, span), totalFrames, SPEED_VARIANTS.length) <=
+      Math.log(PROMISING_FALSE_ALARMS)
+  )
+}
+
 function weakest(running: readonly Running[]): Running {
   return running.reduce((least, track) =>
     track.alignment.hitCount() < least.alignment.hitCount() ? track : least,
@@ -98,7 +118,18 @@ function explains(alignment: Alignment, fromFrame: number, toFrame: number): boo
 /** Landmarks of the log are made anew for each alignment's speed, from the peaks in the store. */
 export function createTracker(index: CatalogueIndex, peaks: PeakStore): Tracker {
   const { totalFrames } = index
+  const source = createBlockLandmarkSource(peaks)
+  const rejected: { readonly recordingNumber: number; readonly offset: number; readonly block: number }[] = []
   let running: Running[] = []
+
+  const isRejected = (candidate: Candidate, block: number): boolean => {
+    while (rejected.length > 0 && rejected[0].block < block - REJECTED_BLOCKS) rejected.shift()
+    return rejected.some(
+      ({ recordingNumber, offset }) =>
+        recordingNumber === candidate.recording.recordingNumber &&
+        Math.abs(offset - candidate.offset) <= SAME_OFFSET_FRAMES,
+    )
+  }
 
   return {
     start(candidate, variant, fromBlock, toBlock) {
@@ -106,15 +137,25 @@ export function createTracker(index: CatalogueIndex, peaks: PeakStore): Tracker 
       if (running.some(({ alignment }) => isSameAlignment(alignment, candidate, variant, frame))) return
       const { recording } = candidate
       const alignment = createAlignment(recording, candidate.offset - recording.start, variant, totalFrames)
-      for (let block = fromBlock; block < toBlock; block++) probeBlock(peaks, alignment, block)
-      running.push({ alignment, firstFrame: lookBack(peaks, alignment, fromBlock) })
+      if (isRejected(candidate, toBlock)) return
+      for (let block = fromBlock; block < toBlock; block++) probeBlock(source, alignment, block)
+      if (!isPromising(alignment, totalFrames)) {
+        rejected.push({
+          recordingNumber: recording.recordingNumber,
+          offset: candidate.offset,
+          block: toBlock,
+        })
+        return
+      }
+      running.push({ alignment, firstFrame: lookBack(source, alignment, fromBlock) })
       if (running.length > MOST_ALIGNMENTS) {
         const dropped = weakest(running)
         running = running.filter((track) => track !== dropped)
       }
     },
     advance(block) {
-      for (const { alignment } of running) probeBlock(peaks, alignment, block)
+      source.dropBefore(block - LOOK_BACK_BLOCKS - 8)
+      for (const { alignment } of running) probeBlock(source, alignment, block)
       const frame = (block + 1) * BLOCK_FRAMES
       const ended = running.filter(({ alignment }) => hasEnded(alignment, frame))
       running = running.filter((track) => !ended.includes(track))

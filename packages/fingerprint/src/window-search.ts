@@ -4,7 +4,7 @@ import { createOffsetHistogram, type Candidate } from './offset-histogram.ts'
 import { HASH_BITS } from './parameters.ts'
 import type { PeakStore } from './peak-store.ts'
 import { UNCHANGED } from './speed-search.ts'
-import { BLOCK_FRAMES } from './tracker.ts'
+import { BLOCK_FRAMES } from './block-landmarks.ts'
 
 /** Blocks whose landmarks are counted together: ten seconds. */
 export const WINDOW_BLOCKS = 5
