@@ -2,6 +2,7 @@ import cookieParser from 'cookie-parser'
 import express, { type Express, type Router } from 'express'
 import { createAdministrationRouter } from './features/administration/administration.router.ts'
 import { createAuthRouter } from './features/auth/auth.router.ts'
+import { createCatalogueImportsRouter } from './features/catalogue-imports/catalogue-imports.router.ts'
 import { createCatalogueRouter } from './features/catalogue/catalogue.router.ts'
 import { createDocumentationRouter } from './features/documentation/documentation.router.ts'
 import { createHealthRouter } from './features/health/health.router.ts'
@@ -32,6 +33,7 @@ const features: readonly ((dependencies: Dependencies) => Router)[] = [
   createAdministrationRouter,
   createStationsRouter,
   createCatalogueRouter,
+  createCatalogueImportsRouter,
   createReferenceAudioRouter,
   createLogsRouter,
   createDetectionsRouter,
