@@ -1,18 +1,23 @@
 import type { QueryClient } from '@tanstack/react-query'
 
-/** First part of every query key: the feature the data belongs to. */
+/** First part of every query key: the kind of thing the data is about. */
 export type QueryScope =
   | 'account'
   | 'administration'
-  | 'catalogue'
   | 'detections'
   | 'disputes'
   | 'distributions'
+  | 'imports'
   | 'logs'
+  | 'months'
   | 'overview'
+  | 'parties'
   | 'plays'
+  | 'recordings'
+  | 'reference-audio'
   | 'statements'
   | 'stations'
+  | 'works'
 
 /**
  * Fetches anew whatever is shown of these features. A change in one feature shows in others (a review changes
