@@ -117,7 +117,10 @@ describe('opening a dispute', () => {
     // Lisbon is an hour ahead of UTC until 25 October.
     expect(mail?.body).toContain('20 October 2026, 11:05:00 (Europe/Lisbon)')
     expect(mail?.body).toContain(`http://fieldfare.test/disputes/${dispute.id}`)
-    const trail: { action: string }[] = await api.database('audit_events').where({ subject_id: dispute.id })
+    const trail: { action: string }[] = await api
+      .database('audit_events')
+      .where({ subject_id: dispute.id })
+      .select('action')
     expect(trail).toMatchObject([{ action: 'open-dispute' }])
     const detail = await auditor.client.json(getDetection, { params: { detectionId: detection.id } })
     expect(detail).toMatchObject({ openDisputeId: dispute.id, canDispute: false })

@@ -82,7 +82,10 @@ describe('calculating a month', () => {
     expect(jobs).toEqual([
       { payload: { distributionId: view.id }, dedupeKey: `calculate-distribution-${view.id}` },
     ])
-    const trail: { action: string }[] = await api.database('audit_events').where({ subject_id: view.id })
+    const trail: { action: string }[] = await api
+      .database('audit_events')
+      .where({ subject_id: view.id })
+      .select('action')
     expect(trail).toMatchObject([{ action: 'calculate-distribution' }])
   })
 
