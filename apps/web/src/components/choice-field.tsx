@@ -71,13 +71,15 @@ export type ChoiceGroupProps = {
   legend: ReactNode
   hint?: ReactNode
   error?: string | undefined
+  /** Name of a form field whose errors concern the whole group. */
+  name?: string
   /** CheckboxFields or RadioFields. */
   children: ReactNode
 }
 
 /** Several checkboxes or radio buttons that answer one question. */
-export function ChoiceGroup({ legend, hint, error, children }: ChoiceGroupProps) {
-  const field = useFieldWiring({ label: legend, hint, error })
+export function ChoiceGroup({ legend, hint, error, name, children }: ChoiceGroupProps) {
+  const field = useFieldWiring({ label: legend, hint, error, name })
   const { id } = field.wiring
   return (
     <fieldset className="grid gap-2" aria-describedby={field.wiring['aria-describedby']}>
