@@ -13,27 +13,32 @@ export type SearchSelectProps = FieldLook & {
   onSearch: (text: string) => void
   onBlur?: () => void
   placeholder?: string
-  disabled?: boolean
 }
 
 const TYPING_PAUSE_MS = 250
+
+/** The text being typed, null while the list is closed; searching waits for a pause in the typing. */
+function useDraft(onSearch: (text: string) => void) {
+  const [draft, setDraft] = useState<string | null>(null)
+  const search = useEffectEvent((text: string) => onSearch(text))
+  useEffect(() => {
+    if (draft === null) return
+    const timer = setTimeout(() => search(draft.trim()), TYPING_PAUSE_MS)
+    return () => clearTimeout(timer)
+  }, [draft])
+  return [draft, setDraft] as const
+}
 
 /** Chooses one of many by typing part of its name; a combobox after the ARIA authoring practices. */
 export function SearchSelect(props: SearchSelectProps) {
   const { label, hint, error, name, optional, selected, onSelect, options } = props
   const field = useFieldWiring({ label, hint, error, name })
   const listId = useId()
-  const [draft, setDraft] = useState<string | null>(null)
+  // What is chosen already does not narrow the choices.
+  const [draft, setDraft] = useDraft((text) => props.onSearch(text === selected?.label ? '' : text))
   const [activeIndex, setActiveIndex] = useState(0)
   const isOpen = draft !== null
   const active = options[activeIndex]
-
-  const search = useEffectEvent((text: string) => props.onSearch(text))
-  useEffect(() => {
-    if (draft === null) return
-    const timer = setTimeout(() => search(draft.trim()), TYPING_PAUSE_MS)
-    return () => clearTimeout(timer)
-  }, [draft])
 
   const choose = (option: SearchOption | null) => {
     onSelect(option)
@@ -43,18 +48,15 @@ export function SearchSelect(props: SearchSelectProps) {
     setDraft(text)
     setActiveIndex(0)
   }
+  const openAsIs = () => open(selected?.label ?? '')
   const handleKeyDown = (event: KeyboardEvent) => {
-    if (event.key === 'ArrowDown' || event.key === 'ArrowUp') {
-      event.preventDefault()
-      if (!isOpen) open('')
-      else setActiveIndex(stepIndex(activeIndex, event.key === 'ArrowDown' ? 1 : -1, options.length))
-    } else if (event.key === 'Enter' && isOpen) {
-      event.preventDefault()
-      if (active !== undefined) choose(active)
-    } else if (event.key === 'Escape' && isOpen) {
-      event.preventDefault()
-      setDraft(null)
-    }
+    const step = { ArrowDown: 1, ArrowUp: -1 }[event.key]
+    if (step === undefined && !(isOpen && (event.key === 'Enter' || event.key === 'Escape'))) return
+    event.preventDefault()
+    if (step !== undefined && isOpen) setActiveIndex(stepIndex(activeIndex, step, options.length))
+    else if (step !== undefined) openAsIs()
+    else if (event.key === 'Escape') setDraft(null)
+    else if (active !== undefined) choose(active)
   }
   const handleBlur = () => {
     if (draft === '' && optional === true) onSelect(null)
@@ -81,25 +83,18 @@ export function SearchSelect(props: SearchSelectProps) {
           aria-autocomplete="list"
           aria-activedescendant={isOpen && active !== undefined ? `${listId}-${active.id}` : undefined}
           placeholder={props.placeholder}
-          disabled={props.disabled}
           value={draft ?? selected?.label ?? ''}
           onChange={(event) => open(event.currentTarget.value)}
-          onClick={() => {
-            if (!isOpen) open('')
+          onClick={(event) => {
+            if (isOpen) return
+            openAsIs()
+            event.currentTarget.select()
           }}
           onKeyDown={handleKeyDown}
           onBlur={handleBlur}
           className="field-box placeholder:text-slate"
         />
-        <OptionList
-          id={listId}
-          label={label}
-          isOpen={isOpen}
-          isFetching={props.isFetching}
-          options={options}
-          activeIndex={activeIndex}
-          onChoose={choose}
-        />
+        <OptionList {...props} id={listId} isOpen={isOpen} activeIndex={activeIndex} onChoose={choose} />
       </div>
     </FieldShell>
   )
@@ -122,14 +117,15 @@ function OptionList({ id, label, isOpen, isFetching, options, activeIndex, onCho
       hidden={!isOpen}
       className="absolute inset-x-0 top-full z-20 mt-1 max-h-72 min-w-56 overflow-y-auto border border-edge bg-sheet shadow-lift"
     >
-      <ul id={id} role="listbox" aria-label={typeof label === 'string' ? label : 'Choices'}>
+      <div id={id} role="listbox" tabIndex={-1} aria-label={typeof label === 'string' ? label : 'Choices'}>
         {options.map((option, index) => (
           // The input keeps the focus and has the keys; the list only takes the pointer.
           // eslint-disable-next-line jsx-a11y/click-events-have-key-events -- the comment above
-          <li
+          <div
             key={option.id}
             id={`${id}-${option.id}`}
             role="option"
+            tabIndex={-1}
             aria-selected={index === activeIndex}
             // A press would blur the input, which closes the list before the click arrives.
             onMouseDown={(event) => event.preventDefault()}
@@ -140,12 +136,10 @@ function OptionList({ id, label, isOpen, isFetching, options, activeIndex, onCho
             )}
           >
             {option.label}
-            {option.detail !== undefined && (
-              <span className="block text-sm text-slate">{option.detail}</span>
-            )}
-          </li>
+            {option.detail !== undefined && <span className="block text-sm text-slate">{option.detail}</span>}
+          </div>
         ))}
-      </ul>
+      </div>
       {options.length === 0 && (
         <p role="status" className="px-3 py-2 text-slate">
           {isFetching ? 'Searching…' : 'Nothing found. Try another part of the name.'}
