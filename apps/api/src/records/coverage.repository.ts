@@ -27,8 +27,8 @@ export const heldAirtimeSql = `select station_months.station_id,
 
 /** Length of a column of ranges in one multirange column, in seconds. */
 const secondsOfMultirange = (column: string) => `coalesce((
-  select sum(extract(epoch from upper(span) - lower(span))) from unnest(${column}) as spans(span)
-), 0)::double precision`
+  select sum(date_part('epoch', upper(span) - lower(span))) from unnest(${column}) as spans(span)
+), 0)`
 
 export type StationCoverage = {
   stationId: string

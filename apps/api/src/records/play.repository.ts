@@ -41,12 +41,19 @@ const heldShareSql = `exists (
     and shares.valid_from <= plays.local_day
     and (shares.valid_to is null or shares.valid_to >= plays.local_day))`
 
+/** The recordings the parties ever had to do with: few, and found by index, before days are compared play by play. */
+const concernedRecordingsSql = `plays.recording_id in (
+  select recording_id from shares where party_id = any(?::uuid[]) and recording_id is not null
+  union
+  select recordings.id from shares join recordings using (work_id) where party_id = any(?::uuid[]))`
+
 /** Keeps plays in which one of the parties holds a share; the query joins `recordings`. */
 export function whereSharedBy<Builder extends Knex.QueryBuilder>(
   query: Builder,
   partyIds: readonly string[],
 ): Builder {
-  query.whereRaw(heldShareSql, [[...partyIds]])
+  const ids = [...partyIds]
+  query.whereRaw(concernedRecordingsSql, [ids, ids]).whereRaw(heldShareSql, [ids])
   return query
 }
 

@@ -39,6 +39,9 @@ export async function countUnreadyLogs(connection: Connection, days: MonthDays):
 
 export type Unsettled = { waiting: number; openDisputes: number; incompleteRecordings: number }
 
+const validShareSql = `shares.valid_from <= played.local_day
+  and (shares.valid_to is null or shares.valid_to >= played.local_day)`
+
 /** What a careful person would settle before money is divided. */
 export async function countUnsettled(connection: Connection, days: MonthDays): Promise<Unsettled> {
   const { rows } = await connection.raw<{ rows: Unsettled[] }>(
@@ -48,15 +51,15 @@ export async function countUnsettled(connection: Connection, days: MonthDays): P
        from plays join recordings on recordings.id = plays.recording_id
        where plays.status = 'counted' and plays.local_day >= ?::date and plays.local_day < ?::date
      ),
-     claimed as (
-       select played.recording_id, played.work_id,
-         coalesce(sum(share_ppm) filter (where shares.recording_id is not null), 0) as recording_ppm,
-         coalesce(sum(share_ppm) filter (where shares.work_id is not null), 0) as work_ppm
-       from played left join shares
-         on (shares.recording_id = played.recording_id or shares.work_id = played.work_id)
-         and shares.valid_from <= played.local_day
-         and (shares.valid_to is null or shares.valid_to >= played.local_day)
-       group by played.recording_id, played.work_id, played.local_day
+     recording_claims as (
+       select played.recording_id, played.local_day, sum(share_ppm) as ppm
+       from played join shares on shares.recording_id = played.recording_id and ${validShareSql}
+       group by played.recording_id, played.local_day
+     ),
+     work_claims as (
+       select played.recording_id, played.local_day, sum(share_ppm) as ppm
+       from played join shares on shares.work_id = played.work_id and ${validShareSql}
+       group by played.recording_id, played.local_day
      )
      select
        (select count(*)::int from station_months join detections
@@ -69,8 +72,11 @@ export async function countUnsettled(connection: Connection, days: MonthDays): P
        (select count(*)::int from disputes join plays on plays.id = disputes.play_id
         where disputes.status = 'open' and plays.local_day >= ?::date and plays.local_day < ?::date)
          as "openDisputes",
-       (select count(distinct recording_id)::int from claimed
-        where work_id is null or recording_ppm <> ? or work_ppm <> ?) as "incompleteRecordings"`,
+       (select count(distinct played.recording_id)::int from played
+          left join recording_claims using (recording_id, local_day)
+          left join work_claims using (recording_id, local_day)
+        where recording_claims.ppm is distinct from ? or work_claims.ppm is distinct from ?)
+         as "incompleteRecordings"`,
     [
       stationMonths(connection, { kind: 'all' }, days),
       days.firstDay,

@@ -55,19 +55,23 @@ export async function sumAirtime(
        union all
        select station_id, 'identified', unnest(played.airtime * held.airtime) from played join held using (station_id)
      ),
-     pieces as (
-       select spans.station_id, spans.kind, quarter at time zone station_months.time_zone as local_time,
-         extract(epoch from least(upper(span), quarter + interval '15 minutes') - greatest(lower(span), quarter))
-           as seconds
-       from spans join station_months using (station_id)
-         cross join lateral generate_series(
-           to_timestamp(floor(extract(epoch from lower(span)) / 900) * 900), upper(span), interval '15 minutes'
-         ) as quarter
+     quarters as (
+       select spans.station_id, spans.kind, quarter,
+         sum(date_part('epoch',
+           least(upper(span), quarter + interval '15 minutes') - greatest(lower(span), quarter))) as seconds
+       from spans cross join lateral generate_series(
+         to_timestamp(floor(date_part('epoch', lower(span)) / 900) * 900), upper(span), interval '15 minutes'
+       ) as quarter
        where quarter < upper(span)
+       group by spans.station_id, spans.kind, quarter
+     ),
+     placed as (
+       select station_id, kind, seconds, quarter at time zone station_months.time_zone as local_time
+       from quarters join station_months using (station_id)
      )
      select station_id as "stationId", local_time::date as day, extract(hour from local_time)::int as hour, kind,
-       sum(seconds)::double precision as seconds
-     from pieces
+       sum(seconds) as seconds
+     from placed
      group by grouping sets
        ((station_id, kind), (local_time::date, kind), (extract(hour from local_time)::int, kind))`,
     [stationMonths(connection, scope, days)],
