@@ -2,6 +2,7 @@ import { openDispute, type PlayId } from '@fieldfare/contracts'
 import { useQueryClient } from '@tanstack/react-query'
 import { useNavigate } from 'react-router'
 import { callApi } from '../lib/api-client.ts'
+import { queryRoots } from '../lib/query-roots.ts'
 import { showToast } from '../lib/toasts.ts'
 import { Button } from './button.tsx'
 import { Form, useContractForm } from './form.tsx'
@@ -19,9 +20,9 @@ export function OpenDisputeForm({ playId, onCancel }: { playId: PlayId; onCancel
       onSubmit={async (body) => {
         const dispute = await callApi(openDispute, { body })
         showToast(`Dispute ${dispute.number} is open.`)
-        void queryClient.invalidateQueries({ queryKey: ['detections'] })
-        void queryClient.invalidateQueries({ queryKey: ['plays'] })
-        void queryClient.invalidateQueries({ queryKey: ['disputes'] })
+        void queryClient.invalidateQueries({ queryKey: queryRoots.detections })
+        void queryClient.invalidateQueries({ queryKey: queryRoots.plays })
+        void queryClient.invalidateQueries({ queryKey: queryRoots.disputes })
         await navigate(`/disputes/${dispute.id}`)
       }}
       actions={

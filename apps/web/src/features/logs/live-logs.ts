@@ -1,5 +1,6 @@
 import type { ServerEvent, StationLogView } from '@fieldfare/contracts'
 import type { QueryClient } from '@tanstack/react-query'
+import { queryRoots } from '../../lib/query-roots.ts'
 import { useServerEvents } from '../../lib/server-events.ts'
 import { logListsKey, logQuery, type LogList } from './logs-queries.ts'
 
@@ -16,7 +17,7 @@ function withProgress(log: StationLogView, event: LogProgressEvent): StationLogV
 /** Puts a worker's message into what is shown; what the message does not carry is fetched once work has ended. */
 export function applyLogProgress(queryClient: QueryClient, event: LogProgressEvent): void {
   if (!isUnderWay(event.status)) {
-    void queryClient.invalidateQueries({ queryKey: ['logs'] })
+    void queryClient.invalidateQueries({ queryKey: queryRoots.logs })
     void queryClient.invalidateQueries({ queryKey: ['detections', 'of-log'] })
     return
   }

@@ -1,6 +1,7 @@
 import { uploadLog, type StationView } from '@fieldfare/contracts'
 import { useQueryClient } from '@tanstack/react-query'
 import { useEffect, useReducer, useRef, useState } from 'react'
+import { queryRoots } from '../../lib/query-roots.ts'
 import { uploadFile } from '../../lib/upload-file.ts'
 import {
   changeEntries,
@@ -44,7 +45,7 @@ export function useLogUploads(): LogUploads {
         onProgress: (progress) => change({ kind: 'sending', progress }),
       })
       change({ kind: 'sent', log }, { isSuggested: false })
-      void queryClient.invalidateQueries({ queryKey: ['logs'] })
+      void queryClient.invalidateQueries({ queryKey: queryRoots.logs })
     } catch (error) {
       if (isAbort(error)) return
       const refusal = refusalOf(error)
