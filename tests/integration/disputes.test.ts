@@ -18,6 +18,7 @@ import {
   type BuiltRecording,
 } from '../factories/build-catalogue.ts'
 import { buildDetection } from '../factories/build-detection.ts'
+import { buildDistribution, issueDistribution } from '../factories/build-distribution.ts'
 import { buildLog } from '../factories/build-log.ts'
 import { buildPlay } from '../factories/build-play.ts'
 import { buildStation, type BuiltStation } from '../factories/build-station.ts'
@@ -153,6 +154,24 @@ describe('opening a dispute', () => {
     const playId = await playOf(foreign)
     const problem = await publisher.client.problem(openDispute, { body: { playId, reason: 'Not ours.' } })
     expect(problem).toMatchObject({ status: 404, code: 'not-found' })
+  })
+
+  it('by a publisher reaches every play of their issued statements, whatever became of the share', async () => {
+    const own = await api.signInAs('publisher', { partyIds: [party.id] })
+    const startedAt = '2026-07-02T10:00:00Z'
+    const play = await buildPlay(api.database, { station, recording: foreign, startedAt })
+    const run = await buildDistribution(api.database, {
+      month: '2026-07',
+      requestedBy: (await api.createUser('clerk')).userId,
+      station,
+      recording: foreign,
+      play,
+      parties: [party],
+    })
+    const request = { body: { playId: play.id, reason: 'Too short.' } }
+    expect(await own.client.problem(openDispute, request)).toMatchObject({ status: 404 })
+    await issueDistribution(api.database, run, clerk.user.userId)
+    expect(await own.client.json(openDispute, request)).toMatchObject({ status: 'open', month: '2026-07' })
   })
 
   it('needs a play that counts and a reason', async () => {

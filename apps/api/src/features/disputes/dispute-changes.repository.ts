@@ -1,10 +1,25 @@
-import type { DisputeId, PlayId, UserId } from '@fieldfare/contracts'
+import type { DisputeId, PartyId, PlayId, UserId } from '@fieldfare/contracts'
 import type { Connection, Transaction } from '@fieldfare/database'
 import type { PlayRow } from '../../records/play.repository.ts'
 
 /** Locks a dispute, so that it is answered and decided one after the other. */
 export async function lockDispute(trx: Transaction, id: DisputeId): Promise<void> {
   await trx('disputes').where({ id }).forUpdate().select('id')
+}
+
+/** Whether a statement issued to one of the parties pays for the play. */
+export async function isOnIssuedStatement(
+  trx: Transaction,
+  partyIds: readonly PartyId[],
+  playId: PlayId,
+): Promise<boolean> {
+  const row: { id: string } | undefined = await trx('statement_line_plays')
+    .join('statements', 'statements.id', 'statement_line_plays.statement_id')
+    .join('distributions', 'distributions.id', 'statements.distribution_id')
+    .where({ 'statement_line_plays.play_id': playId, 'distributions.status': 'issued' })
+    .whereIn('statements.party_id', [...partyIds])
+    .first('statements.id')
+  return row !== undefined
 }
 
 /** What a play's claim rests on, beside the play: the detection's figures and the shares of its day. */

@@ -11,8 +11,13 @@ import {
 import { conflict, notFound } from '../../http/app-error.ts'
 import type { Dependencies } from '../../http/dependencies.ts'
 import { holdPlay } from '../../records/play-changes.repository.ts'
-import { findPlay } from '../../records/play.repository.ts'
-import { insertDispute, listClerkAddresses, readEvidence } from './dispute-changes.repository.ts'
+import { findPlay, type PlayRow } from '../../records/play.repository.ts'
+import {
+  insertDispute,
+  isOnIssuedStatement,
+  listClerkAddresses,
+  readEvidence,
+} from './dispute-changes.repository.ts'
 import { mailOnOpening } from './dispute-mail.ts'
 import { findDispute } from './disputes.repository.ts'
 
@@ -26,6 +31,14 @@ async function tellClerks(trx: Transaction, id: DisputeId, publicUrl: string): P
   return dispute.number
 }
 
+/** A publisher may question every line of their statements, also when a share was corrected since. */
+async function findDisputablePlay(trx: Transaction, actor: Actor, id: PlayId): Promise<PlayRow | null> {
+  const play = await findPlay(trx, scopeOf(actor), id)
+  if (play !== null || actor.role !== 'publisher') return play
+  const isTheirs = await isOnIssuedStatement(trx, actor.partyIds, id)
+  return isTheirs ? findPlay(trx, { kind: 'all' }, id) : null
+}
+
 /** Opens a dispute on a counted play of the actor's scope, freezing the facts as they stand. */
 export async function openDispute(
   { database, configuration }: Pick<Dependencies, 'database' | 'configuration'>,
@@ -35,7 +48,7 @@ export async function openDispute(
   try {
     return await inTransaction(database, async (trx) => {
       await holdPlay(trx, request.playId)
-      const play = await findPlay(trx, scopeOf(actor), request.playId)
+      const play = await findDisputablePlay(trx, actor, request.playId)
       if (play === null) throw notFound('This play')
       if (play.openDisputeId !== null) throw conflict(ALREADY_OPEN)
       if (play.status !== 'counted')
