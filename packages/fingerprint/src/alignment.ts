@@ -140,5 +140,5 @@ export function logChanceOf(evidence: AlignmentEvidence, span: Span): number {
 
 /** The stretch of an alignment where hits come clearly faster than by chance. */
 export function spanOf(evidence: AlignmentEvidence): Span | null {
-  return bestSpan(evidence.hits.logFrames, evidence.backgroundPerFrame)
+  return bestSpan(evidence.hits.logFrames, evidence)
 }

@@ -32,10 +32,7 @@ function hitsOutside(claim: Claim, explained: readonly Explained[]): Span[] {
 
 function restricted(claim: Claim, part: Span): Claim {
   const { evidence } = claim
-  const tight = bestSpan(
-    evidence.hits.logFrames.slice(part.first, part.last + 1),
-    evidence.backgroundPerFrame,
-  )
+  const tight = bestSpan(evidence.hits.logFrames.slice(part.first, part.last + 1), evidence)
   return claimFor(evidence, tight ? { first: part.first + tight.first, last: part.first + tight.last } : part)
 }
 
