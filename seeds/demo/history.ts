@@ -29,12 +29,13 @@ function planLog(plan: HistoryPlan, random: Random, logMs: number): { plays: Pla
   const plays: Play[] = []
   const spans: Span[] = []
   let position = 0
-  const add = (kind: Span['kind'], endMs: number) => {
-    spans.push({ kind, startMs: position, endMs: Math.min(endMs, logMs) })
-    position = Math.min(endMs, logMs)
+  const add = (kind: Span['kind'], until: number) => {
+    const endMs = Math.min(until, logMs)
+    if (endMs > position) spans.push({ kind, startMs: position, endMs })
+    position = endMs
   }
   while (position < logMs) {
-    add('speech', position + random.between(240, 1500) * 1000)
+    add('speech', position + random.between(900, 3000) * 1000)
     if (position >= logMs) break
     let musicEnd = position
     for (let tunes = random.between(1, 3); tunes > 0; tunes -= 1) {
@@ -49,7 +50,7 @@ function planLog(plan: HistoryPlan, random: Random, logMs: number): { plays: Pla
       plays.push({ recordingId: recording.id, startMs, endMs })
       musicEnd = endMs
     }
-    if (musicEnd > position) add('music', musicEnd)
+    add('music', Math.max(position, musicEnd))
     if (random.chance(0.05)) add('silence', position + random.between(3, 9) * 1000)
   }
   return { plays, spans }
