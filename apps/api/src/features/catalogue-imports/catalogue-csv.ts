@@ -73,7 +73,13 @@ function explain(error: CsvError, line: number): AppError {
 
 /** Records with the line each begins on. A cell may hold line breaks, and empty lines are passed over. */
 async function* readRecords(bytes: Buffer): AsyncGenerator<{ line: number; record: string[] }> {
+  let lastLine = 0
   const parser = parse({
+    // Told at once for each record; what is still on its way when an error comes never arrives.
+    on_record: (record: string[], { lines }) => {
+      lastLine = lines
+      return record
+    },
     bom: true,
     delimiter: detectDelimiter(bytes),
     info: true,
@@ -82,12 +88,10 @@ async function* readRecords(bytes: Buffer): AsyncGenerator<{ line: number; recor
     max_record_size: 65_536,
   })
   parser.end(bytes)
-  let lastLine = 0
   try {
     for await (const chunk of parser) {
       const { record, info } = recordSchema.parse(chunk)
       const breaks = record.reduce((sum, cell) => sum + cell.split('\n').length - 1, 0)
-      lastLine = info.lines
       yield { line: info.lines - breaks, record }
     }
   } catch (error) {
