@@ -86,7 +86,7 @@ describe('music of wesnoth-1.16-music on air', () => {
     }
     catalogue = CATALOGUE.map(named)
     index = await buildCatalogue(catalogue)
-    const known = catalogue.map((track, n) => ({ track, seconds: 75, fromSeconds: n % 3 === 2 ? 20 : 0 }))
+    const known = catalogue.map((track, n) => ({ track, seconds: 75, fromSeconds: n % 3 === 2 ? 30 : 0 }))
     const unknown = NOT_IN_CATALOGUE.map((name) => ({ track: named(name), isUnknown: true, seconds: 120 }))
     log = await buildRealMusicLog({
       tracks: [

@@ -36,7 +36,7 @@ async function scheduledItem({ track, fromSeconds = 0, seconds, isUnknown }: Sch
 
 /** Plays the pieces with crossfades, as one MP3 (64 kbit/s unless told otherwise), and says what was played when. */
 export async function buildRealMusicLog(options: RealMusicLogOptions): Promise<RealMusicLog> {
-  const { tracks, path, crossfadeSeconds = 4, bitRate = '64k' } = options
+  const { tracks, path, crossfadeSeconds = 2, bitRate = '64k' } = options
   const items: Item[] = []
   for (const scheduled of tracks) items.push(await scheduledItem(scheduled))
   const { samples, seconds, plays } = airBroadcast(items, crossfadeSeconds)

@@ -43,7 +43,7 @@ const HIGHEST_CONFIDENCE = 99
 /** Stretches of this length are as good as independent looks at the log. */
 const LOOKS_PER_HOUR = 360
 /** A play found from this close to an end of the recording on is taken to reach it: fades hide the rest. */
-const SNAP_SECONDS = 3
+const SNAP_SECONDS = 5
 
 /** An alignment with the stretch it holds for, before overlapping ones are weighed against each other. */
 export type Claim = {
