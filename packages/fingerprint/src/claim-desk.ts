@@ -25,6 +25,12 @@ export type ClaimDesk = {
 /** Final stretches are remembered this long against echoes found late. */
 const MEMORY_FRAMES = (LOOK_BACK_BLOCKS + 20) * BLOCK_FRAMES
 
+function isSparse({ span, startFrame, endFrame }: Claim, thresholds: DetectionThresholds): boolean {
+  const seconds = (endFrame - startFrame) * SECONDS_PER_FRAME
+  const hits = span.last - span.first + 1
+  return seconds < thresholds.sparseSeconds && hits < thresholds.sparseHitsPerSecond * seconds
+}
+
 export function createClaimDesk(index: CatalogueIndex, thresholds: DetectionThresholds): ClaimDesk {
   const { totalFrames } = index
   let waiting: Claim[] = []
@@ -39,7 +45,8 @@ export function createClaimDesk(index: CatalogueIndex, thresholds: DetectionThre
     (claim.endFrame - claim.startFrame) * SECONDS_PER_FRAME >= thresholds.shortestSeconds
   const describe = (claim: Claim, logSeconds: number): Detection => {
     const falseAlarms = falseAlarmsOf(claim)
-    const decision = falseAlarms <= thresholds.acceptFalseAlarms ? 'accept' : 'review'
+    const isSure = falseAlarms <= thresholds.acceptFalseAlarms && !isSparse(claim, thresholds)
+    const decision = isSure ? 'accept' : 'review'
     return describeClaim(claim, falseAlarms, decision, logSeconds)
   }
 

@@ -30,12 +30,20 @@ export type DetectionThresholds = {
   readonly acceptFalseAlarms: number
   readonly reviewFalseAlarms: number
   readonly shortestSeconds: number
+  /**
+   * Recordings share loops and samples: a short stretch in which only part of the landmarks agree may be such a passage
+   * of another recording, however unlikely chance is, so a person decides.
+   */
+  readonly sparseHitsPerSecond: number
+  readonly sparseSeconds: number
 }
 
 export const defaultThresholds: DetectionThresholds = {
   acceptFalseAlarms: 1e-6,
   reviewFalseAlarms: 1e-2,
   shortestSeconds: 3,
+  sparseHitsPerSecond: 6,
+  sparseSeconds: 20,
 }
 
 const MOST_EVIDENCE_PAIRS = 200
