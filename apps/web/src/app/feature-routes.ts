@@ -7,6 +7,10 @@ import { logsRoutes } from '../features/logs/routes.tsx'
 import { overviewRoutes } from '../features/overview/routes.tsx'
 import { playsRoutes } from '../features/plays/routes.tsx'
 import { stationsRoutes } from '../features/stations/routes.tsx'
+import { distributionsRoutes } from '../features/distributions/routes.tsx'
+import { statementsRoutes } from '../features/statements/routes.tsx'
+import { disputesRoutes } from '../features/disputes/routes.tsx'
+import { administrationRoutes } from '../features/administration/routes.tsx'
 
 /** The start page of those whose work begins with the month. */
 export const homeRoutes: RouteObject[] = [...overviewRoutes]
@@ -20,4 +24,8 @@ export const shellRoutes: RouteObject[] = [
   ...playsRoutes,
   ...catalogueRoutes,
   ...importsRoutes,
+  ...distributionsRoutes,
+  ...statementsRoutes,
+  ...disputesRoutes,
+  ...administrationRoutes,
 ]

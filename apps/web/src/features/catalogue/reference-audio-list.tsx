@@ -5,11 +5,10 @@ import { Button } from '../../components/button.tsx'
 import { Code, Count, Duration } from '../../components/figures.tsx'
 import { ProgressBar } from '../../components/progress-bar.tsx'
 import { ErrorState } from '../../components/states.tsx'
-import { StationTime } from '../../components/station-time.tsx'
+import { SocietyTime } from '../../components/society-time.tsx'
 import { TextLink } from '../../components/text-link.tsx'
 import { callApi } from '../../lib/api-client.ts'
 import { formatBytes } from '../../lib/format.ts'
-import { useSession } from '../../lib/session.ts'
 import { refreshScopes } from '../../lib/query-scopes.ts'
 import { ReferenceStatusTag } from './reference-status.tsx'
 import type { ReferenceFractions } from './use-reference-progress.ts'
@@ -50,7 +49,6 @@ export function ReferenceAudioList({ items, fractions, withRecording, canRetry }
 }
 
 function AudioFacts({ audio }: { audio: ReferenceAudioView }) {
-  const { society } = useSession()
   return (
     <p className="flex flex-wrap gap-x-3 text-sm text-slate">
       {audio.format !== null && <span>{audio.format}</span>}
@@ -62,7 +60,7 @@ function AudioFacts({ audio }: { audio: ReferenceAudioView }) {
         </span>
       )}
       <span>
-        Sent by {audio.uploadedByName}, <StationTime instant={audio.uploadedAt} timeZone={society.timeZone} />
+        Sent by {audio.uploadedByName}, <SocietyTime instant={audio.uploadedAt} />
       </span>
     </p>
   )

@@ -16,7 +16,7 @@ import { PageHeader, Section } from '../../components/page-header.tsx'
 import { EmptyState, QueryState } from '../../components/states.tsx'
 import { downloadAddress } from '../../lib/endpoint-address.ts'
 import { useListSearch } from '../../lib/list-search.ts'
-import { ImportedAt } from './imported-at.tsx'
+import { SocietyTime } from '../../components/society-time.tsx'
 import { importQuery, importRowsQuery } from './imports-queries.ts'
 import { outcomeChoices, OutcomeTag } from './outcome-tag.tsx'
 import { RefusedCount } from './refused-count.tsx'
@@ -72,7 +72,7 @@ function ImportReport({ data }: { data: CatalogueImportView }) {
         breadcrumbs={[{ label: 'Imports', to: '/imports' }]}
         lead={
           <>
-            Imported by {data.importedByName}, <ImportedAt instant={data.importedAt} />.
+            Imported by {data.importedByName}, <SocietyTime instant={data.importedAt} />.
           </>
         }
       />

@@ -10,7 +10,7 @@ import { EmptyState } from '../../components/states.tsx'
 import { TextLink } from '../../components/text-link.tsx'
 import { useListSearch } from '../../lib/list-search.ts'
 import { useRole } from '../../lib/session.ts'
-import { ImportedAt } from './imported-at.tsx'
+import { SocietyTime } from '../../components/society-time.tsx'
 import { importsQuery } from './imports-queries.ts'
 import { RefusedCount } from './refused-count.tsx'
 
@@ -22,7 +22,7 @@ const columns: readonly DataColumn<CatalogueImportView>[] = [
     minWidth: '14rem',
     cell: (one) => <TextLink to={`/imports/${one.id}`}>{one.fileName}</TextLink>,
   },
-  { id: 'importedAt', header: 'Imported', cell: (one) => <ImportedAt instant={one.importedAt} /> },
+  { id: 'importedAt', header: 'Imported', cell: (one) => <SocietyTime instant={one.importedAt} /> },
   { id: 'importedBy', header: 'By', cell: (one) => one.importedByName },
   { id: 'rows', header: 'Rows', align: 'end', cell: (one) => <Count value={one.rows} /> },
   { id: 'created', header: 'Created', align: 'end', cell: (one) => <Count value={one.created} /> },
