@@ -37,17 +37,16 @@ export function DetectionFacts({ detection }: { detection: DetectionDetail }) {
         {
           term: 'In the log',
           value: (
-            <>
-              <TextLink to={`/logs/${detection.logId}`}>From</TextLink>{' '}
-              <Duration seconds={detection.logStartSeconds} />
-            </>
+            <TextLink to={`/logs/${detection.logId}`}>
+              <Duration seconds={detection.logStartSeconds} /> into the log
+            </TextLink>
           ),
         },
         {
           term: 'In the reference',
           value: (
             <>
-              From <Duration seconds={detection.referenceStartSeconds} />
+              <Duration seconds={detection.referenceStartSeconds} /> into the reference
             </>
           ),
         },

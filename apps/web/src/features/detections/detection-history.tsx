@@ -14,10 +14,7 @@ export function DetectionHistory({ detection }: { detection: DetectionDetail }) 
   return (
     <ol className="divide-y divide-hairline border-y border-hairline">
       {detection.history.map((entry) => (
-        <li
-          key={`${entry.at} ${entry.what}`}
-          className="grid gap-x-6 py-2 sm:grid-cols-[minmax(12rem,max-content)_1fr]"
-        >
+        <li key={`${entry.at} ${entry.what}`} className="grid gap-x-6 py-2">
           <StationTime instant={entry.at} timeZone={detection.station.timeZone} />
           <div>
             <p>

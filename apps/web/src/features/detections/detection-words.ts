@@ -36,5 +36,5 @@ export function describeAlignment(detection: DetectionDetail): string {
   const { evidence, agreeingHashes } = detection
   if (evidence.length === 0) return 'No agreeing moments are kept for this detection.'
   const largest = Math.max(...evidence.map((pair) => Math.abs(deviationOf(pair, detection))))
-  return `${formatCount(agreeingHashes)} moments agree, ${formatCount(evidence.length)} of them drawn. They lie on one line, none further than ${largest.toFixed(2)} s from it: the same sounds in the same order at the same pace.`
+  return `${formatCount(agreeingHashes)} moments agree, ${formatCount(evidence.length)} of them drawn. They lie on one line, none further than ${largest.toFixed(2)}\u00a0s from it: the same sounds in the same order at the same pace.`
 }

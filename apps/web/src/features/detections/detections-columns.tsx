@@ -19,12 +19,7 @@ function DetectionLink({ detection }: { detection: DetectionView }) {
 
 function PlayMark({ detection }: { detection: DetectionView }) {
   if (detection.play === null) return <span className="text-slate">No play</span>
-  return (
-    <span className="grid">
-      {detection.play.status === 'counted' ? 'Counted' : 'Removed'}
-      {detection.openDisputeId !== null && <StatusTag tone="warn">In dispute</StatusTag>}
-    </span>
-  )
+  return detection.play.status === 'counted' ? 'Counted' : 'Removed'
 }
 
 export const detectionColumns: readonly DataColumn<DetectionView>[] = [
@@ -72,7 +67,17 @@ export const detectionColumns: readonly DataColumn<DetectionView>[] = [
   {
     id: 'state',
     header: 'State',
-    cell: (detection) => <ReviewStateTag state={detection.reviewState} />,
+    cell: (detection) => (
+      <span className="grid">
+        <ReviewStateTag state={detection.reviewState} />
+        {detection.openDisputeId !== null && <StatusTag tone="warn">In dispute</StatusTag>}
+      </span>
+    ),
   },
-  { id: 'play', header: 'Play', cell: (detection) => <PlayMark detection={detection} /> },
+  {
+    id: 'play',
+    header: 'Play',
+    hiddenAtFirst: true,
+    cell: (detection) => <PlayMark detection={detection} />,
+  },
 ]

@@ -1,12 +1,12 @@
 import type { StationLogView } from '@fieldfare/contracts'
 import { DefinitionList } from '../../components/definition-list.tsx'
-import { Count, Percent } from '../../components/figures.tsx'
+import { Count, Duration, Percent } from '../../components/figures.tsx'
 import { StationTime } from '../../components/station-time.tsx'
 import { TextLink } from '../../components/text-link.tsx'
-import { formatBytes, formatHours } from '../../lib/format.ts'
+import { formatBytes } from '../../lib/format.ts'
 
 function airtime(term: string, seconds: number | null) {
-  return seconds === null ? null : { term, value: <span className="figures">{formatHours(seconds)}</span> }
+  return seconds === null ? null : { term, value: <Duration seconds={seconds} /> }
 }
 
 /** What is known of a log as a file and as airtime. */

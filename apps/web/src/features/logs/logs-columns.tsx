@@ -8,7 +8,7 @@ import { LogState } from './log-state.tsx'
 
 function IdentifiedShare({ log }: { log: StationLogView }) {
   if (log.musicSeconds === null || log.identifiedSeconds === null) {
-    return <span className="text-slate">Not known yet</span>
+    return <span className="whitespace-nowrap text-slate">Not yet</span>
   }
   if (log.musicSeconds === 0) return <span className="text-slate">No music</span>
   return <Percent ratio={log.identifiedSeconds / log.musicSeconds} />
@@ -21,13 +21,16 @@ export const logColumns: readonly DataColumn<StationLogView>[] = [
     sortable: true,
     rowHeader: true,
     cell: (log) => (
-      <TextLink to={`/logs/${log.id}`}>
-        <StationTime instant={log.startedAt} timeZone={log.station.timeZone} precision="second" />
-      </TextLink>
+      <>
+        <TextLink to={`/logs/${log.id}`}>
+          <StationTime instant={log.startedAt} timeZone={log.station.timeZone} precision="second" />
+        </TextLink>
+        <span className="block text-sm break-all text-slate">{log.fileName}</span>
+      </>
     ),
   },
-  { id: 'station', header: 'Station', sortable: true, minWidth: '9rem', cell: (log) => log.station.name },
   { id: 'status', header: 'State', minWidth: '14rem', fixed: true, cell: (log) => <LogState log={log} /> },
+  { id: 'station', header: 'Station', sortable: true, minWidth: '9rem', cell: (log) => log.station.name },
   {
     id: 'durationSeconds',
     header: 'Length',
@@ -35,7 +38,7 @@ export const logColumns: readonly DataColumn<StationLogView>[] = [
     align: 'end',
     cell: (log) =>
       log.durationSeconds === null ? (
-        <span className="text-slate">Not read yet</span>
+        <span className="whitespace-nowrap text-slate">Not read</span>
       ) : (
         <Duration seconds={log.durationSeconds} />
       ),
@@ -46,12 +49,6 @@ export const logColumns: readonly DataColumn<StationLogView>[] = [
     header: 'Music identified',
     align: 'end',
     cell: (log) => <IdentifiedShare log={log} />,
-  },
-  {
-    id: 'fileName',
-    header: 'File',
-    minWidth: '12rem',
-    cell: (log) => <span className="break-all">{log.fileName}</span>,
   },
   {
     id: 'sizeBytes',

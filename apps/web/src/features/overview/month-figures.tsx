@@ -54,11 +54,15 @@ export function MonthFigures({ overview }: { overview: MonthOverview }) {
               ),
             ]
           : []),
-        figure('Logs in work', `/logs?month=${month}&status=analysing`, <Count value={totals.logsInWork} />),
         figure(
-          'Logs refused or failed',
-          `/logs?month=${month}&status=rejected`,
-          <Count value={totals.logsRefused} />,
+          'Logs in work',
+          `/logs?month=${month}&status=analysing`,
+          <Count value={totals.logsInWork} />,
+          totals.logsRefused > 0 && (
+            <TextLink to={`/logs?month=${month}&status=rejected`}>
+              <Count value={totals.logsRefused} /> refused or failed
+            </TextLink>
+          ),
         ),
       ]}
     />

@@ -1,4 +1,4 @@
-import { getDetection, type EndpointOutput, type listPlays, type Role } from '@fieldfare/contracts'
+import type { EndpointOutput, listPlays, Role } from '@fieldfare/contracts'
 import { useSearchParams } from 'react-router'
 import type { DataColumn } from '../../components/data-table-model.ts'
 import { Code, Duration } from '../../components/figures.tsx'
@@ -74,7 +74,17 @@ const facts: readonly DataColumn<PlayRow>[] = [
     minWidth: '13rem',
     cell: (play) => <RecordingName recording={play.recording} />,
   },
-  { id: 'isrc', header: 'ISRC', cell: (play) => <Code kind="isrc" value={play.recording.isrc} /> },
+  {
+    id: 'durationSeconds',
+    header: 'Length',
+    sortable: true,
+    align: 'end',
+    cell: (play) => <Duration seconds={play.durationSeconds} />,
+  },
+  { id: 'status', header: 'State', cell: (play) => <PlayState play={play} /> },
+]
+
+const moreFacts: readonly DataColumn<PlayRow>[] = [
   {
     id: 'work',
     header: 'Work',
@@ -83,29 +93,26 @@ const facts: readonly DataColumn<PlayRow>[] = [
       play.work === null ? <span className="text-slate">No work known</span> : play.work.title,
   },
   {
-    id: 'durationSeconds',
-    header: 'Length',
-    sortable: true,
-    align: 'end',
-    cell: (play) => <Duration seconds={play.durationSeconds} />,
+    id: 'isrc',
+    header: 'ISRC',
+    hiddenAtFirst: true,
+    cell: (play) => <Code kind="isrc" value={play.recording.isrc} />,
   },
   { id: 'localDay', header: 'Booked on', hiddenAtFirst: true, cell: (play) => formatDay(play.localDay) },
-  { id: 'status', header: 'State', cell: (play) => <PlayState play={play} /> },
 ]
 
 const dispute: DataColumn<PlayRow> = {
   id: 'dispute',
-  header: 'Question it',
+  header: 'Dispute',
   cell: (play) => <DisputeLink play={play} />,
 }
 
-const withEvidence = [startedWithEvidence, ...facts] as const
-const withEvidenceAndDispute = [...withEvidence, dispute] as const
-const withDispute = [started, ...facts, dispute] as const
+const withEvidence = [startedWithEvidence, ...facts, ...moreFacts] as const
+const withEvidenceAndDispute = [startedWithEvidence, ...facts, dispute, ...moreFacts] as const
+const withDispute = [started, ...facts, dispute, ...moreFacts] as const
 
 /** The columns a role has a use for: evidence is for those who may hear it, disputes for those who may open them. */
 export function playColumnsFor(role: Role): readonly DataColumn<PlayRow>[] {
   if (role === 'publisher') return withDispute
-  if (!getDetection.access.some((reader) => reader === role)) return facts
   return role === 'auditor' ? withEvidenceAndDispute : withEvidence
 }
