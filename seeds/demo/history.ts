@@ -25,7 +25,11 @@ type Play = { recordingId: string; startMs: number; endMs: number }
 type Span = { kind: 'music' | 'speech' | 'silence'; startMs: number; endMs: number }
 
 /** Six hours of a talk-led programme: speech, then one to three tunes, sometimes one that nobody has catalogued. */
-function planLog(plan: HistoryPlan, random: Random, logMs: number): { plays: Play[]; spans: Span[] } {
+function planLog(
+  plan: HistoryPlan,
+  random: Random,
+  { logMs, talkSeconds }: { logMs: number; talkSeconds: readonly [number, number] },
+): { plays: Play[]; spans: Span[] } {
   const plays: Play[] = []
   const spans: Span[] = []
   let position = 0
@@ -35,7 +39,7 @@ function planLog(plan: HistoryPlan, random: Random, logMs: number): { plays: Pla
     position = endMs
   }
   while (position < logMs) {
-    add('speech', position + random.between(900, 3000) * 1000)
+    add('speech', position + random.between(...talkSeconds) * 1000)
     if (position >= logMs) break
     let musicEnd = position
     for (let tunes = random.between(1, 3); tunes > 0; tunes -= 1) {
@@ -56,6 +60,11 @@ function planLog(plan: HistoryPlan, random: Random, logMs: number): { plays: Pla
   return { plays, spans }
 }
 
+/** Nights have more music and less talk. */
+function talkOf({ talkSeconds: [low, high] }: DemoStation, start: DateTime<true>): readonly [number, number] {
+  return start.hour < LOG_HOURS ? [Math.round(low / 2), Math.round(high / 2)] : [low, high]
+}
+
 function total(spans: readonly Span[], kind: Span['kind']): number {
   return spans.reduce((sum, span) => (span.kind === kind ? sum + span.endMs - span.startMs : sum), 0)
 }
@@ -68,7 +77,7 @@ async function insertLog(database: Database, plan: HistoryPlan, station: DemoSta
       .set({ hour: start.hour + LOG_HOURS })
       .toMillis() - start.toMillis()
   const random = createRandom(start.toMillis() / 1000 + station.callName.charCodeAt(0) * 7919)
-  const { plays, spans } = planLog(plan, random, logMs)
+  const { plays, spans } = planLog(plan, random, { logMs, talkSeconds: talkOf(station, start) })
   const end = start.plus({ milliseconds: logMs })
   const fileName = `${station.callName}_${start.toFormat('yyyy-LL-dd_HH-mm')}.mp3`
   const rows: { id: string }[] = await database('station_logs')

@@ -4,6 +4,7 @@ export const SOCIETY_NAME = 'Heron Sound Rights Society'
 export const stationPlans = [
   {
     callName: 'SALT',
+    talkSeconds: [600, 1700],
     name: 'Saltglass Radio',
     timeZone: 'Europe/Lisbon',
     monthlyFeeMinor: 1_480_000n,
@@ -11,6 +12,7 @@ export const stationPlans = [
   },
   {
     callName: 'ROPE',
+    talkSeconds: [900, 2600],
     name: 'Ropewalk Nine',
     timeZone: 'Europe/Lisbon',
     monthlyFeeMinor: 925_050n,
@@ -18,6 +20,7 @@ export const stationPlans = [
   },
   {
     callName: 'FOGB',
+    talkSeconds: [1500, 4200],
     name: 'Fogbell Public Radio',
     timeZone: 'Atlantic/Azores',
     monthlyFeeMinor: 640_000n,
@@ -25,6 +28,7 @@ export const stationPlans = [
   },
   {
     callName: 'WIND',
+    talkSeconds: [1000, 3400],
     name: 'Windrow Island Radio',
     timeZone: 'Atlantic/Azores',
     monthlyFeeMinor: 312_499n,
