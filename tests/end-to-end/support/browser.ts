@@ -103,9 +103,11 @@ export async function openVisit(options: VisitOptions): Promise<Visit> {
   if (client !== undefined) await signInBeforehand(context, baseUrl, client)
   const page = await context.newPage()
   const mishaps = watch(page)
+  const provoked = new Set<number>()
   return {
     page,
-    mishaps: (provoked = []) =>
-      mishaps.filter(({ status }) => status === null || !provoked.includes(status)).map(({ text }) => text),
+    provoke: (status) => void provoked.add(status),
+    mishaps: () =>
+      mishaps.filter(({ status }) => status === null || !provoked.has(status)).map(({ text }) => text),
   }
 }
