@@ -44,11 +44,19 @@ export async function findMail(connection: Connection, id: MailMessageId): Promi
   return row ?? null
 }
 
-export async function markMailSent(connection: Connection, id: MailMessageId): Promise<void> {
+/**
+ * Notes that a mail has left. Unless it is to be read in the local inbox, its text goes: it may hold a link that
+ * opens an account.
+ */
+export async function markMailSent(
+  connection: Connection,
+  id: MailMessageId,
+  { keepText }: { keepText: boolean },
+): Promise<void> {
   await connection('mail_messages')
     .where({ id })
     .whereNull('sent_at')
-    .update({ sent_at: connection.fn.now() })
+    .update({ sent_at: connection.fn.now(), ...(keepText ? {} : { body: '' }) })
 }
 
 export async function listMail(database: Database, page: PageRequest): Promise<PageResult<MailMessage>> {

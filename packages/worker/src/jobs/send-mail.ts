@@ -3,7 +3,7 @@ import type { JobHandler } from './job-context.ts'
 
 /** Sends one mail. Mail servers drop a second copy by its message id, should the job run twice. */
 export const sendMailJob: JobHandler<'send-mail'> = {
-  async run({ database, mail, finish }, { mailMessageId }) {
+  async run({ configuration, database, mail, finish }, { mailMessageId }) {
     const message = await findMail(database, mailMessageId)
     if (message !== null && message.sentAt === null) {
       await mail.send({
@@ -13,6 +13,7 @@ export const sendMailJob: JobHandler<'send-mail'> = {
         messageId: message.id,
       })
     }
-    await finish((trx) => markMailSent(trx, mailMessageId))
+    const keepText = configuration.mail.kind === 'inbox'
+    await finish((trx) => markMailSent(trx, mailMessageId, { keepText }))
   },
 }
