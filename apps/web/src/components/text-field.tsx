@@ -55,7 +55,7 @@ export function DateTimeField({
       optional={optional === true}
     >
       <div className="flex flex-wrap items-center gap-x-3 gap-y-1">
-        <input {...input} {...field.wiring} type={kind} className="field-box max-w-64 font-mono" />
+        <input {...input} {...field.wiring} type={kind} className="field-box max-w-72 font-mono" />
         {timeZone !== undefined && <span className="text-sm text-slate">Time zone {timeZone}</span>}
       </div>
     </FieldShell>

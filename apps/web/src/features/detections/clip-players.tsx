@@ -128,8 +128,9 @@ function PartPlayer({ detection, fromSeconds, hearing }: PartPlayerProps) {
           {formatClock(heardAt, station.timeZone, 'second')} {formatZone(startedAt, station.timeZone)}
         </p>
       </div>
-      <p role="status" className="sr-only">
-        {players.state === 'fetching' && 'Fetching the clips'}
+      <p role="status" className="min-h-6 text-sm text-slate">
+        {players.state === 'fetching' &&
+          'Fetching the sound. The first time it is cut out for you, which takes a few seconds.'}
       </p>
       <Failures failures={players.failures} />
     </div>

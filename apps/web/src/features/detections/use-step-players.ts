@@ -70,6 +70,12 @@ export function useStepPlayers(
     }
   }
 
+  const stop = () => {
+    wanted.current = false
+    for (const audio of elements()) audio.pause()
+    setState('still')
+  }
+
   // Somebody may have pressed pause while the clips were fetched.
   const isWanted = () => wanted.current
 
@@ -84,14 +90,13 @@ export function useStepPlayers(
       return
     }
     for (const audio of ready) audio.currentTime = first.currentTime
-    await Promise.all(ready.map((audio) => audio.play()))
-    setState('playing')
-  }
-
-  const stop = () => {
-    wanted.current = false
-    for (const audio of elements()) audio.pause()
-    setState('still')
+    try {
+      await Promise.all(ready.map((audio) => audio.play()))
+      setState('playing')
+    } catch {
+      // Paused again before the sound began, or the browser wants another press first: both leave it still.
+      stop()
+    }
   }
 
   const seek = (seconds: number) => {
