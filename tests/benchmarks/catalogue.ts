@@ -29,7 +29,7 @@ export const MUSIC_PACKAGES = [
   'hyperrogue-music',
 ] as const
 
-const SHORTEST_SECONDS = 30
+const SHORTEST_SECONDS = 60
 const RATE_HZ = engineParameters.sampleRateHz
 
 export type LoadedTrack = { readonly track: MusicTrack; readonly samples: Samples }
