@@ -2,27 +2,12 @@ import { Percent } from '../../components/figures.tsx'
 import { StatusTag } from '../../components/status-tag.tsx'
 import { WHOLE_PPM } from './percent-text.ts'
 
-/** What the shares valid today come to, and what that means for the money. */
+/** What the shares valid today come to; the shape says whether something is held back. */
 export function ClaimedToday({ ppm }: { ppm: number }) {
-  if (ppm === WHOLE_PPM) return <StatusTag tone="good">100 % claimed</StatusTag>
-  if (ppm > WHOLE_PPM) {
-    return (
-      <StatusTag tone="bad">
-        <span>
-          <Percent ppm={ppm} decimals={4} /> claimed
-        </span>
-      </StatusTag>
-    )
-  }
+  if (ppm === 0) return <StatusTag tone="warn">Nothing</StatusTag>
   return (
-    <StatusTag tone="warn">
-      {ppm === 0 ? (
-        'Nothing claimed'
-      ) : (
-        <span>
-          <Percent ppm={ppm} decimals={4} /> claimed
-        </span>
-      )}
+    <StatusTag tone={ppm === WHOLE_PPM ? 'good' : ppm > WHOLE_PPM ? 'bad' : 'warn'}>
+      <Percent ppm={ppm} decimals={4} />
     </StatusTag>
   )
 }

@@ -16,7 +16,7 @@ export const recordingColumns: readonly DataColumn<RecordingView>[] = [
     minWidth: '14rem',
     cell: (recording) => <TextLink to={`/recordings/${recording.id}`}>{recording.title}</TextLink>,
   },
-  { id: 'artist', header: 'Artist', sortable: true, cell: (recording) => recording.artist },
+  { id: 'artist', header: 'Artist', sortable: true, minWidth: '8rem', cell: (recording) => recording.artist },
   {
     id: 'isrc',
     header: 'ISRC',
@@ -27,6 +27,7 @@ export const recordingColumns: readonly DataColumn<RecordingView>[] = [
     id: 'length',
     header: 'Length',
     align: 'end',
+    hiddenAtFirst: true,
     cell: (recording) =>
       recording.durationSeconds === null ? '–' : <Duration seconds={recording.durationSeconds} />,
   },
@@ -37,7 +38,7 @@ export const recordingColumns: readonly DataColumn<RecordingView>[] = [
   },
   {
     id: 'claimed',
-    header: 'Shares today',
+    header: 'Claimed today',
     cell: (recording) => <ClaimedToday ppm={recording.shares.totalTodayPpm} />,
   },
   {

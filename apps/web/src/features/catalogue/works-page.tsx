@@ -39,7 +39,7 @@ const columns: readonly DataColumn<WorkView>[] = [
   },
   {
     id: 'claimed',
-    header: 'Shares today',
+    header: 'Claimed today',
     cell: (work) => <ClaimedToday ppm={work.shares.totalTodayPpm} />,
   },
 ]
