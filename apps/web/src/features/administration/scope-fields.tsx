@@ -38,7 +38,7 @@ export function RoleField({ value, onChange }: RoleFieldProps) {
           onChange={() => onChange(role)}
           label={
             <>
-              {roleLabels[role]} <span className="text-slate">{duties[role]}</span>
+              {roleLabels[role]}: <span className="text-slate">{duties[role]}</span>
             </>
           }
         />

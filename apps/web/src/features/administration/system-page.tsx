@@ -41,7 +41,7 @@ function Health({ health }: { health: SystemHealth }) {
         <Workers workers={health.workers} />
       </Section>
       <Section title="Recent failures">
-        <Failures failures={health.recentFailures} />
+        <Failures health={health} />
       </Section>
     </>
   )
@@ -139,7 +139,8 @@ function Workers({ workers }: Pick<SystemHealth, 'workers'>) {
   )
 }
 
-function Failures({ failures }: { failures: SystemHealth['recentFailures'] }) {
+function Failures({ health: { recentFailures: failures, queues } }: { health: SystemHealth }) {
+  const labels = new Map(queues.map(({ kind, label }) => [kind, label]))
   if (failures.length === 0) return <p className="text-slate">Nothing failed lately.</p>
   return (
     <PlainTable
@@ -147,7 +148,11 @@ function Failures({ failures }: { failures: SystemHealth['recentFailures'] }) {
       head={['When', 'Work', 'What happened']}
       rows={failures.map((failure) => ({
         key: `${failure.failedAt} ${failure.kind} ${failure.message}`,
-        cells: [<SocietyTime key="at" instant={failure.failedAt} />, failure.kind, failure.message],
+        cells: [
+          <SocietyTime key="at" instant={failure.failedAt} />,
+          labels.get(failure.kind) ?? failure.kind,
+          failure.message,
+        ],
       }))}
     />
   )

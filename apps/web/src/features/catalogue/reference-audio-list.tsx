@@ -24,7 +24,7 @@ type ReferenceAudioListProps = {
 /** Reference audio with its state, live; what failed says why. */
 export function ReferenceAudioList({ items, fractions, withRecording, canRetry }: ReferenceAudioListProps) {
   return (
-    <ul className="divide-y divide-hairline border-y border-hairline">
+    <ul className="divide-y divide-hairline border-b border-hairline">
       {items.map((audio) => (
         <li
           key={audio.id}

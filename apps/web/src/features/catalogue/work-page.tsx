@@ -61,7 +61,7 @@ function WorkDetails({ work }: { work: WorkView }) {
 
 function WorkRecordings({ recordings }: Pick<WorkView, 'recordings'>) {
   return (
-    <ul className="divide-y divide-hairline border-y border-hairline">
+    <ul className="divide-y divide-hairline border-b border-hairline">
       {recordings.map((recording) => (
         <li key={recording.id} className="flex flex-wrap items-baseline justify-between gap-x-6 py-2">
           <span>

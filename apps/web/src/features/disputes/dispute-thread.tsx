@@ -5,7 +5,7 @@ import { SocietyTime } from '../../components/society-time.tsx'
 /** Reason, messages and decision, in the order of time. */
 export function DisputeThread({ dispute }: { dispute: DisputeView }) {
   return (
-    <ol className="max-w-[72ch] divide-y divide-hairline border-y border-hairline">
+    <ol className="max-w-[72ch] divide-y divide-hairline border-b border-hairline">
       <Saying
         who={dispute.openedByName}
         authorRole={dispute.openedByRole}

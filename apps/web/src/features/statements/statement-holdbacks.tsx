@@ -8,7 +8,7 @@ export function StatementHoldbacks({ statement }: { statement: StatementView }) 
     return <p className="text-slate">Nothing is held back that concerns this payee.</p>
   }
   return (
-    <ul className="divide-y divide-hairline border-y border-hairline">
+    <ul className="divide-y divide-hairline border-b border-hairline">
       {holdbacks.map((holdback, index) => (
         // Holdbacks have no identity of their own and never change within a statement.
         <li key={index} className="flex flex-wrap items-baseline justify-between gap-x-6 gap-y-1 py-2">
