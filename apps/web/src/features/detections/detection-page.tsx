@@ -82,7 +82,7 @@ function DetectionHeader({ detection, neighbours }: { detection: DetectionDetail
 
 function DetectionView({ detection, areKeysOn }: { detection: DetectionDetail; areKeysOn: boolean }) {
   return (
-    <div className="grid min-w-0 gap-x-12 lg:grid-cols-[minmax(0,3fr)_minmax(20rem,2fr)]">
+    <div className="grid min-w-0 gap-x-12 lg:grid-cols-[minmax(0,3fr)_minmax(23rem,2fr)]">
       <div className="min-w-0">
         <Section title="Listen">
           <ClipPlayers key={detection.id} detection={detection} />
