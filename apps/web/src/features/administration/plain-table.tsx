@@ -1,4 +1,5 @@
 import type { ReactNode } from 'react'
+import { ScrollRegion } from '../../components/scroll-region.tsx'
 
 type PlainTableProps = {
   caption: string
@@ -12,7 +13,7 @@ type PlainTableProps = {
 export function PlainTable({ caption, head, rows, figureFrom = head.length }: PlainTableProps) {
   const side = (index: number) => (index >= figureFrom ? 'px-3 py-1.5 text-right' : 'px-3 py-1.5 text-left')
   return (
-    <div className="overflow-x-auto">
+    <ScrollRegion label={caption}>
       <table className="w-full text-[0.95rem]">
         <caption className="sr-only">{caption}</caption>
         <thead>
@@ -42,6 +43,6 @@ export function PlainTable({ caption, head, rows, figureFrom = head.length }: Pl
           ))}
         </tbody>
       </table>
-    </div>
+    </ScrollRegion>
   )
 }

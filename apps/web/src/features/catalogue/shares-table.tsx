@@ -1,12 +1,13 @@
 import type { ShareSet } from '@fieldfare/contracts'
 import { Percent } from '../../components/figures.tsx'
 import { TextLink } from '../../components/text-link.tsx'
+import { ScrollRegion } from '../../components/scroll-region.tsx'
 import { formatDay } from '../../lib/format-time.ts'
 
 /** Shares with the days they are valid on, closed by what is claimed today. */
 export function SharesTable({ shares, caption }: { shares: ShareSet; caption: string }) {
   return (
-    <div className="overflow-x-auto">
+    <ScrollRegion label={caption}>
       <table className="w-full text-[0.95rem]">
         <caption className="sr-only">{caption}</caption>
         <thead>
@@ -52,6 +53,6 @@ export function SharesTable({ shares, caption }: { shares: ShareSet; caption: st
           </tr>
         </tfoot>
       </table>
-    </div>
+    </ScrollRegion>
   )
 }

@@ -1,6 +1,7 @@
 import { rightLabels, type DistributionView } from '@fieldfare/contracts'
 import { Money } from '../../components/money.tsx'
 import { EmptyState } from '../../components/states.tsx'
+import { ScrollRegion } from '../../components/scroll-region.tsx'
 import { sumMinor } from './station-sums.ts'
 
 /** What is kept back, from whom and why. */
@@ -9,7 +10,7 @@ export function HoldbackTable({ view: { holdbacks } }: { view: DistributionView 
     return <EmptyState title="Nothing is held back">Every pool went to payees to the last unit.</EmptyState>
   }
   return (
-    <div className="print-whole overflow-x-auto">
+    <ScrollRegion label="Money held back">
       <table className="w-full text-[0.95rem] [&_td]:px-3 [&_td]:py-1.5 [&_th]:px-3 [&_th]:py-1.5">
         <caption className="sr-only">Money held back</caption>
         <thead>
@@ -50,6 +51,6 @@ export function HoldbackTable({ view: { holdbacks } }: { view: DistributionView 
           </tr>
         </tfoot>
       </table>
-    </div>
+    </ScrollRegion>
   )
 }

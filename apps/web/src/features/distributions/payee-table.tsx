@@ -2,6 +2,7 @@ import type { DistributionView } from '@fieldfare/contracts'
 import { Money } from '../../components/money.tsx'
 import { EmptyState } from '../../components/states.tsx'
 import { TextLink } from '../../components/text-link.tsx'
+import { ScrollRegion } from '../../components/scroll-region.tsx'
 import { sumMinor } from './station-sums.ts'
 
 /** What each party is due, with the way to its statement. */
@@ -14,7 +15,7 @@ export function PayeeTable({ view: { payeeTotals } }: { view: DistributionView }
     )
   }
   return (
-    <div className="print-whole max-w-4xl overflow-x-auto">
+    <ScrollRegion label="Payees of the month">
       <table className="w-full text-[0.95rem] [&_td]:px-3 [&_td]:py-1.5 [&_th]:px-3 [&_th]:py-1.5">
         <caption className="sr-only">Payees of the month</caption>
         <thead>
@@ -58,6 +59,6 @@ export function PayeeTable({ view: { payeeTotals } }: { view: DistributionView }
           </tr>
         </tfoot>
       </table>
-    </div>
+    </ScrollRegion>
   )
 }

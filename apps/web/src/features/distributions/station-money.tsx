@@ -2,6 +2,7 @@ import { rightLabels, type DistributionView } from '@fieldfare/contracts'
 import type { ReactNode } from 'react'
 import { Count, Percent } from '../../components/figures.tsx'
 import { Money } from '../../components/money.tsx'
+import { ScrollRegion } from '../../components/scroll-region.tsx'
 import { TextLink } from '../../components/text-link.tsx'
 import { classNames } from '../../lib/class-names.ts'
 import { formatHours } from '../../lib/format.ts'
@@ -21,19 +22,12 @@ export function StationMoney({ view }: { view: DistributionView }) {
 
 function Ledger({ caption, children }: { caption: string; children: ReactNode }) {
   return (
-    <div
-      role="region"
-      aria-label={caption}
-      // A scrolling region must take the focus so that arrow keys can scroll it (WCAG 2.1.1).
-      // eslint-disable-next-line jsx-a11y/no-noninteractive-tabindex -- the comment above
-      tabIndex={0}
-      className="print-whole overflow-x-auto"
-    >
+    <ScrollRegion label={caption}>
       <table className="w-full text-[0.95rem] whitespace-nowrap [&_td]:px-3 [&_td]:py-1.5 [&_th]:px-3 [&_th]:py-1.5">
         <caption className="pb-2 text-left font-serif text-lg">{caption}</caption>
         {children}
       </table>
-    </div>
+    </ScrollRegion>
   )
 }
 

@@ -9,6 +9,7 @@ import { PageHeader, Section } from '../../components/page-header.tsx'
 import { ProgressBar } from '../../components/progress-bar.tsx'
 import { ErrorState } from '../../components/states.tsx'
 import { UnsavedGuard } from '../../components/unsaved-guard.tsx'
+import { ScrollRegion } from '../../components/scroll-region.tsx'
 import { isApiProblem } from '../../lib/api-problem.ts'
 import { formatBytes } from '../../lib/format.ts'
 import { showToast } from '../../lib/toasts.ts'
@@ -129,7 +130,7 @@ function saveTemplate() {
 
 function ColumnTable() {
   return (
-    <div className="overflow-x-auto">
+    <ScrollRegion label="Columns of the file, in order">
       <table className="w-full text-[0.95rem]">
         <caption className="sr-only">Columns of the file, in order</caption>
         <thead>
@@ -157,6 +158,6 @@ function ColumnTable() {
           ))}
         </tbody>
       </table>
-    </div>
+    </ScrollRegion>
   )
 }

@@ -1,5 +1,6 @@
 import type { StatementView } from '@fieldfare/contracts'
 import { Percent } from '../../components/figures.tsx'
+import { ScrollRegion } from '../../components/scroll-region.tsx'
 import { formatHours } from '../../lib/format.ts'
 import { StatementMoney } from './statement-money.tsx'
 
@@ -7,7 +8,7 @@ import { StatementMoney } from './statement-money.tsx'
 export function StatementStations({ statement }: { statement: StatementView }) {
   const { currency, currencyDigits, stations } = statement
   return (
-    <div className="print-whole overflow-x-auto">
+    <ScrollRegion label="Net amount by station">
       <table className="w-full text-[0.95rem] [&_td]:px-3 [&_td]:py-1.5 [&_th]:px-3 [&_th]:py-1.5">
         <caption className="sr-only">Net amount by station</caption>
         <thead>
@@ -54,6 +55,6 @@ export function StatementStations({ statement }: { statement: StatementView }) {
           </tr>
         </tfoot>
       </table>
-    </div>
+    </ScrollRegion>
   )
 }
