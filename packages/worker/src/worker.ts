@@ -88,6 +88,8 @@ export async function startWorker(configuration: Configuration, logger: Logger):
     onError: (error) => logger.warn({ error }, 'dispatcher'),
   })
   dispatcher.start()
+  // Loaded before the first log asks for it; should it fail, that log tries again.
+  services.catalogue.refresh().catch((error: unknown) => logger.warn({ error }, 'catalogue not loaded yet'))
   const stopHeartbeat = startHeartbeat(services, name)
   logger.info({ name, threads: configuration.workerThreads }, 'worker started')
   return {
