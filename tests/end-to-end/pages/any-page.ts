@@ -42,6 +42,7 @@ const SIDEWAYS = 'document.documentElement.scrollWidth - document.documentElemen
 /** How many pixels a page is wider than its window, once its charts have taken their new size; 0 is as it should be. */
 export async function sidewaysPixels(page: Page): Promise<number> {
   const measure = async () => z.number().parse(await page.evaluate(SIDEWAYS))
+  // Whether it settled is for the measure below to say.
   await waitUntil(async () => (await measure()) === 0, { everyMs: 50, timeoutMs: 5000 }).catch(
     () => undefined,
   )
