@@ -8,6 +8,7 @@ import {
   type Actor,
   type Transaction,
 } from '@fieldfare/database'
+import { describeLocal } from '../../airtime/local-time.ts'
 import { conflict, notFound } from '../../http/app-error.ts'
 import type { Dependencies } from '../../http/dependencies.ts'
 import { holdPlay } from '../../records/play-changes.repository.ts'
@@ -61,7 +62,7 @@ export async function openDispute(
         action: 'open-dispute',
         subjectKind: 'dispute',
         subjectId: id,
-        summary: `Opened dispute ${number} on “${play.recording.title}” on ${play.station.callName} at ${play.startedAt}`,
+        summary: `Opened dispute ${number} on “${play.recording.title}” on ${play.station.callName} at ${describeLocal(play.startedAt, play.station.timeZone)} (${play.station.timeZone})`,
       })
       return id
     })

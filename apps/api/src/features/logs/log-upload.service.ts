@@ -87,7 +87,7 @@ async function recordLog(
     action: 'upload-log',
     subjectKind: 'station-log',
     subjectId: log.id,
-    summary: `Sent ${log.fileName} for ${station.name}, beginning ${log.startedAt.toISOString()}.`,
+    summary: `Sent ${log.fileName} for ${station.name}, beginning ${describeLocal(log.startedAt, station.timeZone)} (${station.timeZone}).`,
   })
 }
 
