@@ -110,6 +110,23 @@ describe('a session that has run out', () => {
     expect(server.requestsTo(listStations)).toHaveLength(1)
   })
 
+  it.each([
+    ['does not answer', () => Promise.reject(new TypeError('Failed to fetch'))],
+    ['is not ready', () => Promise.resolve(new Response('<html>Bad gateway</html>', { status: 502 }))],
+  ])('is not over because the service %s when it is renewed', async (_what, renew) => {
+    vi.stubGlobal('fetch', (address: string) =>
+      address === refreshSession.path ? renew() : Promise.resolve(problemAnswer('not-signed-in')),
+    )
+    const listener = vi.fn()
+    const stop = onSessionEnd(listener)
+
+    const problem = await problemOf(callApi(listStations))
+    stop()
+
+    expect(problem.code).toBe('unavailable')
+    expect(listener).not.toHaveBeenCalled()
+  })
+
   it('is not looked for behind a wrong password', async () => {
     server.handle(signIn, () => problemAnswer('sign-in-failed'))
 

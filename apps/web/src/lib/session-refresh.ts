@@ -1,15 +1,20 @@
 import { refreshSession } from '@fieldfare/contracts'
+import { connectionProblem, problemFromAnswer } from './api-problem.ts'
 import { csrfHeader } from './csrf.ts'
 
 let running: Promise<boolean> | null = null
 const endListeners = new Set<() => void>()
 
+/** A service that is away or not ready has not ended the session: that is a problem to retry, not a sign-out. */
 async function exchangeCookies(): Promise<boolean> {
   const answer = await fetch(refreshSession.path, {
     method: refreshSession.method,
     headers: csrfHeader(),
     credentials: 'same-origin',
+  }).catch(() => {
+    throw connectionProblem()
   })
+  if (answer.status >= 500) throw problemFromAnswer(answer.status, undefined)
   return answer.ok
 }
 

@@ -1,6 +1,6 @@
 import { Percent } from '../../components/figures.tsx'
 import { StatusTag } from '../../components/status-tag.tsx'
-import { WHOLE_PPM } from './percent-text.ts'
+import { WHOLE_PPM } from '../../lib/percent-text.ts'
 
 /** What the shares valid today come to; the shape says whether something is held back. */
 export function ClaimedToday({ ppm }: { ppm: number }) {

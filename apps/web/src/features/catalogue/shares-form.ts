@@ -6,7 +6,7 @@ import {
 } from '@fieldfare/contracts'
 import { z } from 'zod'
 import { formatDay } from '../../lib/format-time.ts'
-import { percentToPpm, ppmToPercent, WHOLE_PPM } from './percent-text.ts'
+import { percentToPpm, ppmToPercent, WHOLE_PPM } from '../../lib/percent-text.ts'
 
 const percentSchema = z.string().transform((text, context): number => {
   const ppm = percentToPpm(text)
