@@ -127,12 +127,26 @@ export async function postponeJob(
   return updated === 1
 }
 
-/** Jobs whose worker fell silent go back to waiting, ready to be queued again. */
+/** Gives the job back because its worker stops: the next one takes it at once, and the try does not count. */
+export async function handBackJob(connection: Connection, id: JobId, workerName: string): Promise<boolean> {
+  const updated = await connection('jobs')
+    .where({ id, status: 'running', worker_name: workerName })
+    .update({ status: 'waiting', queued_at: null, attempts: connection.raw('attempts - 1') })
+  return updated === 1
+}
+
+/**
+ * Jobs whose worker fell silent go back to waiting, ready to be queued again. A job whose row is locked is being
+ * ended at this moment; waiting for it would keep every other job waiting too.
+ */
 export async function releaseSilentJobs(database: Database): Promise<number> {
-  return database('jobs')
+  const silent = database('jobs')
     .where({ status: 'running' })
     .whereRaw("heartbeat_at < now() - ? * interval '1 millisecond'", [JOB_SILENCE_MS])
-    .update({ status: 'waiting', queued_at: null })
+    .forUpdate()
+    .skipLocked()
+    .select('id')
+  return database('jobs').whereIn('id', silent).update({ status: 'waiting', queued_at: null })
 }
 
 /**

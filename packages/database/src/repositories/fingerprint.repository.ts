@@ -38,6 +38,9 @@ export type NewFingerprint = {
 /** Stores a fingerprint and marks its reference audio as ready. Storing the same one again changes nothing. */
 export async function saveFingerprint(trx: Transaction, fingerprint: NewFingerprint): Promise<void> {
   const { reference, durationMs } = fingerprint
+  // Workers ask for what came after the last sequence number they saw. Numbers are given out before transactions
+  // commit: taking turns until the commit keeps a lower one from appearing after a higher one was seen.
+  await trx.raw("select pg_advisory_xact_lock(hashtext('fingerprints_sequence'))")
   await trx('fingerprints')
     .insert({
       reference_audio_id: reference.id,

@@ -172,18 +172,26 @@ export const ENGINE_ACTOR = 'Detection engine'
 
 /**
  * Makes plays of the accepted detections of a log that have none, with the event that says so. A detection that a
- * person has decided on keeps what they decided.
+ * person has decided on keeps what they decided. A play ends where the airtime of its log does: where two logs
+ * overlap, the seconds they share count once, and the rest of a tune that runs from one into the other still counts.
  */
-export async function insertPlaysForAccepted(trx: Transaction, logId: StationLogId): Promise<number> {
+export async function insertPlaysForAccepted(
+  trx: Transaction,
+  logId: StationLogId,
+  airtime: { from: Date; to: Date },
+): Promise<number> {
   const result: { rows: unknown[] } = await trx.raw(
     `with made as (
        insert into plays
          (detection_id, detection_started_at, station_id, recording_id, started_at, ended_at, local_day)
-       select d.id, d.started_at, d.station_id, d.recording_id, d.started_at, d.ended_at,
-         (d.started_at at time zone s.time_zone)::date
+       select d.id, d.started_at, d.station_id, d.recording_id, held.started_at, held.ended_at,
+         (held.started_at at time zone s.time_zone)::date
        from detections d
        join stations s on s.id = d.station_id
-       where d.log_id = :logId and d.decision = 'accept'
+       cross join lateral (
+         select greatest(d.started_at, :from::timestamptz) as started_at, least(d.ended_at, :to::timestamptz) as ended_at
+       ) held
+       where d.log_id = :logId and d.decision = 'accept' and held.started_at < held.ended_at
          and not exists (select 1 from detection_reviews r where r.detection_id = d.id)
          and not exists (select 1 from plays p where p.detection_id = d.id)
        order by d.started_at, d.id
@@ -191,7 +199,7 @@ export async function insertPlaysForAccepted(trx: Transaction, logId: StationLog
        returning id
      )
      insert into play_events (play_id, kind, actor_name) select id, 'created', :actor from made returning play_id`,
-    { logId, actor: ENGINE_ACTOR },
+    { logId, actor: ENGINE_ACTOR, ...airtime },
   )
   return result.rows.length
 }

@@ -132,7 +132,7 @@ async function writeResults(trx: Transaction, log: LogToAnalyse, { probe, outcom
     outcome.detections,
   )
   await insertDetections(trx, log, ENGINE_VERSION, detections)
-  await insertPlaysForAccepted(trx, log.id)
+  await insertPlaysForAccepted(trx, log.id, airtime)
   const spans = markIdentifiedAsMusic(
     outcome.spans.map(({ kind, startSeconds, endSeconds }) => ({
       kind,

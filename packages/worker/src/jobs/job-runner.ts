@@ -3,6 +3,7 @@ import {
   claimJob,
   completeJob,
   failJob,
+  handBackJob,
   inTransaction,
   isJobKind,
   JOB_SILENCE_MS,
@@ -31,13 +32,21 @@ type RunnerOptions = { services: WorkerServices; handlers: JobHandlers; workerNa
 
 /** Reports that the job is alive until stopped; aborts the signal when it was taken away. */
 function keepAlive({ services, workerName }: RunnerOptions, id: JobId, controller: AbortController) {
+  let isReporting = false
   const timer = setInterval(() => {
-    reportJobAlive(services.database, id, workerName).then(
-      (isOurs) => {
-        if (!isOurs) controller.abort(new JobTakenAway(`job ${id} was taken away`))
-      },
-      (error: unknown) => services.logger.warn({ error, jobId: id }, 'heartbeat failed'),
-    )
+    // While results are written the row is locked and a report waits; more of them would only hold connections.
+    if (isReporting) return
+    isReporting = true
+    reportJobAlive(services.database, id, workerName)
+      .then(
+        (isOurs) => {
+          if (!isOurs) controller.abort(new JobTakenAway(`job ${id} was taken away`))
+        },
+        (error: unknown) => services.logger.warn({ error, jobId: id }, 'heartbeat failed'),
+      )
+      .finally(() => {
+        isReporting = false
+      })
   }, HEARTBEAT_MS)
   return () => clearInterval(timer)
 }
@@ -97,7 +106,7 @@ async function settleFailure(
     return
   }
   if (isStopping) {
-    await postponeJob(database, job.id, workerName, { message: 'The worker was stopped.', delayMs: 0 })
+    await handBackJob(database, job.id, workerName)
     return
   }
   logger.error({ ...about, error }, 'job broke off')

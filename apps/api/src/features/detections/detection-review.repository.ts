@@ -29,7 +29,8 @@ export async function insertReview(
 }
 
 /**
- * The play of a detection that had none, dated in the station's zone.
+ * The play of a detection that had none, dated in the station's zone. It ends where the airtime of its log does, so
+ * that what two logs share counts once.
  *
  * @throws ConstraintViolation plays_month_open, or plays_counted_once when another play covers that airtime
  */
@@ -38,9 +39,13 @@ export async function insertPlayOfDetection(trx: Transaction, id: DetectionId): 
     `insert into plays
        (detection_id, detection_started_at, station_id, recording_id, started_at, ended_at, local_day)
      select detections.id, detections.started_at, detections.station_id, detections.recording_id,
-       detections.started_at, detections.ended_at,
-       (detections.started_at at time zone stations.time_zone)::date
+       held.started_at, held.ended_at, (held.started_at at time zone stations.time_zone)::date
      from detections join stations on stations.id = detections.station_id
+     join station_logs on station_logs.id = detections.log_id
+     cross join lateral (
+       select greatest(detections.started_at, lower(station_logs.airtime)) as started_at,
+         least(detections.ended_at, upper(station_logs.airtime)) as ended_at
+     ) held
      where detections.id = ?
      returning id`,
     [id],

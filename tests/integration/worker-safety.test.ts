@@ -1,0 +1,192 @@
+import { randomBytes, randomUUID } from 'node:crypto'
+import {
+  mailMessageIdSchema,
+  referenceAudioIdSchema,
+  type JobId,
+  type RecordingId,
+  type StationId,
+} from '@fieldfare/contracts'
+import {
+  claimJob,
+  completeJob,
+  createDatabase,
+  enqueueJob,
+  handBackJob,
+  inTransaction,
+  insertPlaysForAccepted,
+  JOB_SILENCE_MS,
+  listFingerprintsAfter,
+  releaseSilentJobs,
+  saveFingerprint,
+  type Database,
+  type ReferenceToFingerprint,
+} from '@fieldfare/database'
+import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { createTestDatabase } from '../support/index.ts'
+import { addDetection, addLog, addRecording, addStation } from './feature-data.ts'
+
+/** What the worker relies on where several workers, logs and references meet. */
+let database: Database
+let userId: string
+
+beforeAll(async () => {
+  const { url } = await createTestDatabase()
+  database = createDatabase({ databaseUrl: url, applicationName: 'fieldfare-test' })
+  const users: { id: string }[] = await database('users')
+    .insert({
+      email: 'clerk@example.org',
+      name: 'Clerk',
+      role: 'clerk',
+      status: 'active',
+      password_hash: 'x',
+    })
+    .returning('id')
+  userId = users[0]?.id ?? ''
+})
+afterAll(() => database.destroy())
+
+async function enqueue(): Promise<JobId> {
+  const payload = { mailMessageId: mailMessageIdSchema.parse(randomUUID()) }
+  const { id } = await inTransaction(database, (trx) =>
+    enqueueJob(trx, { kind: 'send-mail', payload, dedupeKey: randomUUID() }),
+  )
+  return id
+}
+
+describe('a tune that runs from one log into the next, while both recorders run', () => {
+  const FIRST = '2026-11-03T10:00:00.000Z'
+  const SECOND = '2026-11-03T10:59:59.000Z'
+  let stationId: StationId
+  let recordingId: RecordingId
+
+  const playsOf = () =>
+    database('plays')
+      .where({ recording_id: recordingId })
+      .orderBy('started_at')
+      .select<{ startedAt: string; endedAt: string }[]>({ startedAt: 'started_at', endedAt: 'ended_at' })
+
+  beforeAll(async () => {
+    stationId = await addStation(database)
+    recordingId = await addRecording(database)
+  })
+
+  it('counts in both, and the second they share counts once', async () => {
+    const first = await addLog(database, { stationId, startedAt: FIRST, seconds: 3600 })
+    // The second log began a second before the first ended; that second belongs to the first.
+    const second = await addLog(database, { stationId, startedAt: '2026-11-03T11:00:00.000Z', seconds: 3599 })
+    const found = { stationId, recordingId }
+    await addDetection(
+      database,
+      { ...found, logId: first, logStartedAt: FIRST, from: 3480, to: 3600 },
+      'accept',
+    )
+    await addDetection(database, { ...found, logId: second, logStartedAt: SECOND, from: 0, to: 91 }, 'accept')
+    const airtimes = [
+      { logId: first, from: new Date(FIRST), to: new Date('2026-11-03T11:00:00.000Z') },
+      {
+        logId: second,
+        from: new Date('2026-11-03T11:00:00.000Z'),
+        to: new Date('2026-11-03T11:59:59.000Z'),
+      },
+    ]
+    for (const { logId, ...airtime } of airtimes)
+      await inTransaction(database, (trx) => insertPlaysForAccepted(trx, logId, airtime))
+    expect(await playsOf()).toEqual([
+      { startedAt: '2026-11-03T10:58:00.000Z', endedAt: '2026-11-03T11:00:00.000Z' },
+      { startedAt: '2026-11-03T11:00:00.000Z', endedAt: '2026-11-03T11:01:30.000Z' },
+    ])
+  })
+})
+
+describe('fingerprints that are stored at the same moment', () => {
+  async function addReference(): Promise<ReferenceToFingerprint> {
+    const recordingId = await addRecording(database)
+    const id = referenceAudioIdSchema.parse(randomUUID())
+    const reference = { id, recordingId, storageKey: `reference-audio/${id}`, fileName: 'tune.wav' }
+    await database('reference_audio').insert({
+      id,
+      recording_id: recordingId,
+      file_name: reference.fileName,
+      size_bytes: 1,
+      sha256: randomBytes(32),
+      storage_key: reference.storageKey,
+      uploaded_by: userId,
+    })
+    return reference
+  }
+  const fingerprintOf = (reference: ReferenceToFingerprint) => ({
+    reference,
+    engineVersion: 'test',
+    landmarks: new Uint8Array([1]),
+    landmarkHashes: 1,
+    format: 'WAV',
+    durationMs: 1000,
+  })
+
+  it('are all seen by a worker that asks for what is new, in whatever order they commit', async () => {
+    const [slow, quick] = [await addReference(), await addReference()]
+    const seen: bigint[] = []
+    const askForNew = async () => {
+      const rows = await listFingerprintsAfter(database, 'test', seen.at(-1) ?? 0n, 100)
+      seen.push(...rows.map(({ sequence }) => sequence))
+    }
+    let release = (): void => undefined
+    const released = new Promise<void>((resolve) => (release = resolve))
+    let slowIsWritten = (): void => undefined
+    const written = new Promise<void>((resolve) => (slowIsWritten = resolve))
+    const slowSave = inTransaction(database, async (trx) => {
+      await saveFingerprint(trx, fingerprintOf(slow))
+      slowIsWritten()
+      await released
+    })
+    await written
+    const quickSave = inTransaction(database, (trx) => saveFingerprint(trx, fingerprintOf(quick)))
+    // The quick one is done first, or waits for the slow one.
+    await Promise.race([quickSave, untilSomebodyWaits()])
+    await askForNew()
+    release()
+    await Promise.all([slowSave, quickSave])
+    await askForNew()
+    expect(seen).toHaveLength(2)
+  })
+
+  async function untilSomebodyWaits(): Promise<void> {
+    for (;;) {
+      const waiting: unknown[] = await database('pg_locks').where({ granted: false }).select('pid')
+      if (waiting.length > 0) return
+    }
+  }
+})
+
+describe('a job', () => {
+  it('that a stopping worker hands back is free at once, and the try does not count', async () => {
+    const id = await enqueue()
+    for (const worker of ['first', 'second', 'third']) {
+      expect(await claimJob(database, id, worker)).toMatchObject({ attempts: 1 })
+      expect(await handBackJob(database, id, worker)).toBe(true)
+    }
+    expect(await handBackJob(database, id, 'third')).toBe(false)
+  })
+
+  it('whose long result is being written does not hold up the others', async () => {
+    const [busy, silent] = [await enqueue(), await enqueue()]
+    await claimJob(database, busy, 'busy')
+    await claimJob(database, silent, 'dead')
+    await database('jobs')
+      .whereIn('id', [busy, silent])
+      .update({ heartbeat_at: new Date(Date.now() - 2 * JOB_SILENCE_MS) })
+    await inTransaction(database, async (trx) => {
+      expect(await completeJob(trx, busy, 'busy')).toBe(true)
+      expect(await releaseSilentJobs(database)).toBe(1)
+    })
+    const statuses = await database('jobs')
+      .whereIn('id', [busy, silent])
+      .select<{ id: string; status: string }[]>('id', 'status')
+    expect(new Map(statuses.map((row) => [row.id, row.status]))).toEqual(
+      new Map([
+        [busy, 'done'],
+        [silent, 'waiting'],
+      ]),
+    )
+  })
+})
