@@ -298,6 +298,34 @@ describe('recordings that cannot be used', () => {
     expect(log.failure_message).toMatch(/^[A-Z].{30,}\.$/)
   })
 
+  it('reference audio without sound in it fails at once, with the reason', async () => {
+    const path = join(directory, 'empty-reference.wav')
+    await writeAudioFile(path, new Float32Array(0), SAMPLE_RATE, { format: 'wav' })
+    const recordingId = await insertReturningId('recordings', {
+      isrc: isrcOf(104),
+      title: 'Empty',
+      artist: 'X',
+    })
+    const id = await addReference(path, recordingId)
+    const job = await waitUntil(
+      async () => {
+        const row: { status: string; attempts: number; error_message: string } | undefined = await database(
+          'jobs',
+        )
+          .where({ dedupe_key: `fingerprint-reference-${id}-1` })
+          .first('status', 'attempts', 'error_message')
+        return row?.status === 'failed' ? row : null
+      },
+      { timeoutMs: 60_000, description: 'the reference refused' },
+    )
+    expect(job.attempts).toBe(1)
+    expect(job.error_message).not.toContain('broke off')
+    expect(await database('reference_audio').where({ id }).first('status', 'failure')).toEqual({
+      status: 'failed',
+      failure: job.error_message,
+    })
+  })
+
   it('a recording that breaks off is analysed as far as it goes, with a warning', async () => {
     const whole = join(directory, 'whole.wav')
     await writeAudioFile(whole, tunes[0]?.samples ?? new Float32Array(), SAMPLE_RATE, { format: 'wav' })

@@ -5,6 +5,7 @@ import {
   saveFingerprint,
 } from '@fieldfare/database'
 import { ENGINE_VERSION } from '@fieldfare/fingerprint'
+import { UnusableAudio } from '../engine/thread-pool.ts'
 import { JobRefused, type JobHandler } from './job-context.ts'
 
 /** Below this a reference says too little to be told from chance. */
@@ -23,9 +24,11 @@ export const fingerprintReferenceJob: JobHandler<'fingerprint-reference'> = {
     } as const
     await markReferenceFingerprinting(database, reference.id)
     await tell({ ...event, status: 'fingerprinting', fraction: null })
-    const outcome = await storage.withLocalFile(reference.storageKey, (path) =>
-      threads.fingerprint(path, signal),
-    )
+    const outcome = await storage
+      .withLocalFile(reference.storageKey, (path) => threads.fingerprint(path, signal))
+      .catch((error: unknown) => {
+        throw error instanceof UnusableAudio ? new JobRefused(error.userMessage, { cause: error }) : error
+      })
     if (outcome.isSilent) throw new JobRefused('The file is silent from beginning to end.')
     if (outcome.durationSeconds < SHORTEST_SECONDS)
       throw new JobRefused(
