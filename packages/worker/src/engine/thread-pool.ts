@@ -35,10 +35,6 @@ export type ThreadPool = {
 
 const THREAD_FILE = new URL('./thread-entry.mjs', import.meta.url)
 
-function startThread(): PooledThread {
-  return { worker: new Worker(THREAD_FILE), appliedChanges: 0 }
-}
-
 type Exchange = { onProgress: (doneSeconds: number) => void; signal: AbortSignal | null }
 
 /** One request and its answer. The thread is ended when the request is aborted or the thread itself dies. */
@@ -102,11 +98,26 @@ function isResult<Task extends keyof ThreadResults>(
 }
 
 /** Starts threads that each keep the index. Close the pool to end them. */
-export function createThreadPool(size: number): ThreadPool {
-  const free: PooledThread[] = Array.from({ length: size }, startThread)
-  const all = new Set(free)
+export function createThreadPool(size: number, startWorker = () => new Worker(THREAD_FILE)): ThreadPool {
+  const all = new Set<PooledThread>()
   const waiting: Waiting[] = []
   let isClosed = false
+
+  /** A thread that dies while it has nothing to do is forgotten; the next task starts another in its place. */
+  function startThread(): PooledThread {
+    const thread = { worker: startWorker(), appliedChanges: 0 }
+    all.add(thread)
+    // Whoever waits for an answer hears of an error there; without a listener here an idle one would end the process.
+    thread.worker.on('error', () => undefined)
+    thread.worker.on('exit', () => {
+      all.delete(thread)
+      const position = free.indexOf(thread)
+      if (position >= 0) free.splice(position, 1)
+    })
+    return thread
+  }
+
+  const free: PooledThread[] = Array.from({ length: size }, startThread)
 
   function release(thread: PooledThread): void {
     const next = waiting.shift()
@@ -117,15 +128,13 @@ export function createThreadPool(size: number): ThreadPool {
   function replace(thread: PooledThread): void {
     all.delete(thread)
     void thread.worker.terminate()
-    if (isClosed) return
-    const fresh = startThread()
-    all.add(fresh)
-    release(fresh)
+    if (!isClosed && all.size < size) release(startThread())
   }
 
   function acquire(): Promise<PooledThread> {
     const thread = free.pop()
     if (thread) return Promise.resolve(thread)
+    if (all.size < size) return Promise.resolve(startThread())
     return new Promise((resolve) => waiting.push({ take: resolve }))
   }
 
