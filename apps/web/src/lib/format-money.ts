@@ -31,12 +31,15 @@ export function formatMoney(amountMinor: string | bigint, currency: string, digi
   return `${sign}${symbol}${NARROW_SPACE}${figures}`
 }
 
+/** Commas stand between groups of three figures only: 1200,50 is not 120,050. */
+const AMOUNT = /^(-?)(\d{1,15}|\d{1,3}(?:,\d{3}){1,4})(?:\.(\d+))?$/
+
 /** What a person typed (1,234.56 or 1234.5) as minor units; null where it is not an amount. */
 export function parseMoney(text: string, digits: number): string | null {
-  const compact = text.replace(/[\s,\u202f\u00a0]/g, '').replace(MINUS, '-')
-  const match = /^(-?)(\d{1,15})(?:\.(\d+))?$/.exec(compact)
+  const compact = text.replace(/[\s\u202f\u00a0]/g, '').replace(MINUS, '-')
+  const match = AMOUNT.exec(compact)
   if (match === null) return null
   const [, sign = '', whole = '', part = ''] = match
   if (part.length > digits) return null
-  return BigInt(`${sign}${whole}${part.padEnd(digits, '0')}`).toString()
+  return BigInt(`${sign}${whole.replaceAll(',', '')}${part.padEnd(digits, '0')}`).toString()
 }

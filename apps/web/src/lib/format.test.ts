@@ -48,11 +48,12 @@ describe('parseMoney', () => {
     ['12', '1200'],
     ['\u22120.05', '-5'],
     ['1 234.50', '123450'],
+    ['12,345,678.90', '1234567890'],
   ])('reads %s', (text, minor) => {
     expect(parseMoney(text, 2)).toBe(minor)
   })
 
-  it.each(['', '1.234', '12a', '--1', '.5'])('refuses %s', (text) => {
+  it.each(['', '1.234', '12a', '--1', '.5', '1200,50', '1,5', '12,34,567', '1,23'])('refuses %s', (text) => {
     expect(parseMoney(text, 2)).toBeNull()
   })
 })
