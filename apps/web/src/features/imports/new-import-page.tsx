@@ -2,6 +2,7 @@ import { catalogueCsvColumns, importCatalogue } from '@fieldfare/contracts'
 import { useQueryClient } from '@tanstack/react-query'
 import { Download } from 'lucide-react'
 import { useState } from 'react'
+import { flushSync } from 'react-dom'
 import { useNavigate } from 'react-router'
 import { Button } from '../../components/button.tsx'
 import { FileField } from '../../components/file-field.tsx'
@@ -70,6 +71,8 @@ function ImportForm() {
       void refreshScopes(queryClient, 'imports', 'recordings', 'works', 'parties')
       showToast(`${done.fileName} is imported.`)
       setFiles([])
+      // The guard must be gone before the way to the report, or it would ask about what is saved already.
+      flushSync(() => setProgress(null))
       await navigate(`/imports/${done.id}`)
     } catch (error) {
       setFailure(error)
