@@ -5,6 +5,7 @@ import {
   type JobId,
   type RecordingId,
   type StationId,
+  type StationLogId,
 } from '@fieldfare/contracts'
 import {
   claimJob,
@@ -16,6 +17,7 @@ import {
   insertPlaysForAccepted,
   JOB_SILENCE_MS,
   listFingerprintsAfter,
+  markLogUnusable,
   releaseSilentJobs,
   saveFingerprint,
   type Database,
@@ -95,6 +97,28 @@ describe('a tune that runs from one log into the next, while both recorders run'
       { startedAt: '2026-11-03T10:58:00.000Z', endedAt: '2026-11-03T11:00:00.000Z' },
       { startedAt: '2026-11-03T11:00:00.000Z', endedAt: '2026-11-03T11:01:30.000Z' },
     ])
+  })
+})
+
+describe('a log whose audio can no longer be used', () => {
+  const outcome = { status: 'rejected', code: 'unrecognised-format', message: 'This is not audio.' } as const
+  const refused = async (logId: StationLogId) => {
+    await inTransaction(database, (trx) => markLogUnusable(trx, logId, outcome))
+    return database('station_logs')
+      .where({ id: logId })
+      .first<{ status: string; isHeld: boolean }>('status', database.raw('airtime is not null as "isHeld"'))
+  }
+
+  it('stays held when it was analysed before, since its plays still count', async () => {
+    const log = { stationId: await addStation(database), startedAt: '2026-11-05T10:00:00.000Z', seconds: 60 }
+    expect(await refused(await addLog(database, log))).toEqual({ status: 'failed', isHeld: true })
+  })
+
+  it('is refused when nothing was ever made of it', async () => {
+    const log = { stationId: await addStation(database), startedAt: '2026-11-05T10:00:00.000Z', seconds: 60 }
+    const id = await addLog(database, { ...log, status: 'analysing' })
+    await database('station_logs').where({ id }).update({ analysed_at: null })
+    expect(await refused(id)).toEqual({ status: 'rejected', isHeld: false })
   })
 })
 

@@ -96,7 +96,7 @@ export async function listMonthLicences(connection: Connection, month: string): 
        coalesce((
          select sum(extract(epoch from upper(g.airtime * p.stretch) - lower(g.airtime * p.stretch)))
          from station_logs g
-         where g.station_id = p.station_id and g.airtime && p.stretch and g.status = 'analysed'
+         where g.station_id = p.station_id and g.airtime && p.stretch and g.status <> 'rejected'
        ), 0)::float8 as "heldSeconds"
      from placed p order by p.station_id, p.from_day`,
     { month },

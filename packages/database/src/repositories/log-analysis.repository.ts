@@ -46,18 +46,23 @@ export async function markLogAnalysing(connection: Connection, id: StationLogId)
     .update({ status: 'analysing' })
 }
 
-/** A log that cannot be used (`rejected`, the sender must act) or that we could not finish (`failed`, we must). */
+/**
+ * A log that cannot be used (`rejected`, the sender must act) or that we could not finish (`failed`, we must). A log
+ * that was analysed before keeps its airtime, since its plays still count: its new run failed, whatever the reason.
+ */
 export async function markLogUnusable(
   connection: Connection,
   id: StationLogId,
   outcome: { status: 'rejected' | 'failed'; code: string; message: string },
 ): Promise<void> {
-  await connection('station_logs').where({ id }).update({
-    status: outcome.status,
-    failure_code: outcome.code,
-    failure_message: outcome.message,
-    airtime: null,
-  })
+  await connection('station_logs')
+    .where({ id })
+    .update({
+      status: connection.raw(`case when analysed_at is null then ? else 'failed' end`, [outcome.status]),
+      failure_code: outcome.code,
+      failure_message: outcome.message,
+      airtime: connection.raw('case when analysed_at is not null then airtime end'),
+    })
 }
 
 export type HeldAirtime = { fileName: string; from: Instant; to: Instant }
