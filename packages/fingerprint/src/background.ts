@@ -22,7 +22,7 @@ export function describeBackground(pairCounts: ArrayLike<number>): BackgroundLaw
   }
   const mean = Math.max(sum / kept, 0.5 / kept)
   const variance = squares / kept - (sum / kept) ** 2
-  return { mean, dispersion: Math.max(1, variance / mean) * SPREAD_ALLOWANCE }
+  return { mean, dispersion: 1.1 + SPREAD_ALLOWANCE * Math.max(0, variance / mean - 1) }
 }
 
 /** Hits of one recording at all the offsets beside the alignment. */

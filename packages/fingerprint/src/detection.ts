@@ -50,8 +50,19 @@ const MOST_EVIDENCE_PAIRS = 200
 const HIGHEST_CONFIDENCE = 99
 /** Stretches of this length are as good as independent looks at the log. */
 const LOOKS_PER_HOUR = 360
-/** A play found from this close to an end of the recording on is taken to reach it: fades hide the rest. */
+/**
+ * A play found from this close to an end of the recording on is taken to reach it: fades hide the rest. A short stretch
+ * is more likely an excerpt and reaches less far.
+ */
 const SNAP_SECONDS = 5
+const SNAP_SECONDS_SHORT = 1
+const SNAP_SHARE = 0.1
+
+/** Standard deviation of a hit around its line. */
+const HIT_SCATTER_FRAMES = 1.2
+/** A fitted speed is believed when it differs this many standard errors from the one searched for, or is this exact. */
+const SLOPE_DEVIATIONS = 4
+const SLOPE_IS_EXACT = 2e-4
 
 /** An alignment with the stretch it holds for, before overlapping ones are weighed against each other. */
 export type Claim = {
@@ -102,8 +113,10 @@ function fitLine({ hits, variant }: AlignmentEvidence, { first, last }: Span): L
     spread += x * x
     together += x * (hits.referenceFrames[i] - meanReference)
   }
-  // Below five seconds the slope would be noise.
-  const slope = hits.logFrames[last] - hits.logFrames[first] > 150 ? together / spread : variant.speedRatio
+  const fitted = together / Math.max(1, spread)
+  const uncertainty = HIT_SCATTER_FRAMES / Math.sqrt(Math.max(1, spread))
+  const isTelling = Math.abs(fitted - variant.speedRatio) > SLOPE_DEVIATIONS * uncertainty
+  const slope = isTelling || uncertainty < SLOPE_IS_EXACT ? fitted : variant.speedRatio
   return { slope, intercept: meanReference - slope * meanLog }
 }
 
@@ -122,10 +135,11 @@ export function describeClaim(
   const referenceAt = (frame: number) => (frame * line.slope + line.intercept) * SECONDS_PER_FRAME
   let startSeconds = startFrame * SECONDS_PER_FRAME
   let endSeconds = endFrame * SECONDS_PER_FRAME
+  const snap = Math.min(SNAP_SECONDS, SNAP_SECONDS_SHORT + SNAP_SHARE * (endSeconds - startSeconds))
   const missingStart = referenceAt(startFrame)
   const missingEnd = length - referenceAt(endFrame)
-  if (missingStart <= SNAP_SECONDS) startSeconds = Math.max(0, startSeconds - missingStart / speedRatio)
-  if (missingEnd <= SNAP_SECONDS) endSeconds = Math.min(logSeconds, endSeconds + missingEnd / speedRatio)
+  if (missingStart <= snap) startSeconds = Math.max(0, startSeconds - missingStart / speedRatio)
+  if (missingEnd <= snap) endSeconds = Math.min(logSeconds, endSeconds + missingEnd / speedRatio)
   const step = Math.max(1, Math.ceil((span.last - span.first + 1) / MOST_EVIDENCE_PAIRS))
   const pairs: EvidencePair[] = []
   for (let i = span.first; i <= span.last; i += step) {

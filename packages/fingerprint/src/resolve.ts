@@ -4,6 +4,7 @@ import { bestSpan, type Span } from './span.ts'
 /** A crossfade: two plays may overlap for this long without one of them being the other's echo. */
 const CROSSFADE_FRAMES = 400
 const FEWEST_HITS_OUTSIDE = 5
+const UNCHANGED_SPEED_ADVANTAGE = 1.15
 
 /** A stretch of the log that is explained already. */
 export type Explained = {
@@ -57,6 +58,12 @@ function withCrossfade(claim: Claim, part: Claim, explained: readonly Explained[
   return claimFor(claim.evidence, { first, last })
 }
 
+/** Hits of the claim; a changed speed must explain more than the speed nearly everything is played at. */
+function weightOf({ evidence, span }: Claim): number {
+  const hits = span.last - span.first + 1
+  return evidence.variant.speedRatio === 1 ? hits * UNCHANGED_SPEED_ADVANTAGE : hits
+}
+
 /**
  * Decides between overlapping claims: the one with most evidence explains its whole span, and others keep only what
  * lies outside, if `isSignificant` says that part stands on its own. Returns the claims that stand, by start.
@@ -68,7 +75,7 @@ export function resolveClaims(
 ): Claim[] {
   const byEvidence = [...claims].sort(
     (a, b) =>
-      b.span.last - b.span.first - (a.span.last - a.span.first) ||
+      weightOf(b) - weightOf(a) ||
       a.startFrame - b.startFrame ||
       a.evidence.recording.recordingNumber - b.evidence.recording.recordingNumber,
   )

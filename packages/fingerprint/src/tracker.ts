@@ -22,9 +22,10 @@ const PATIENCE_FRAMES_WEAK = 320
 const WEAK_HITS = 40
 const MOST_ALIGNMENTS = 24
 /** False alarms per hour of log, as strong as a candidate after a closer look, that are worth following. */
-const PROMISING_FALSE_ALARMS = 100
-/** A candidate that was not borne out is not looked at again for this long. */
+const PROMISING_FALSE_ALARMS = 3000
+/** A candidate that was not borne out is not looked at again for this long, unless its hits grew by this factor. */
 const REJECTED_BLOCKS = 3
+const SECOND_LOOK_GROWTH = 1.25
 /** Candidates this close in offset and speed are the same alignment. */
 const SAME_OFFSET_FRAMES = 8
 const SAME_SPEED = 0.006
@@ -45,6 +46,7 @@ export type Tracker = {
   readonly earliestFrame: () => number | null
 }
 
+type Rejected = { readonly candidate: Candidate; readonly block: number }
 type Running = { readonly alignment: Alignment; firstFrame: number }
 
 function probeBlock(source: BlockLandmarkSource, alignment: Alignment, block: number): void {
@@ -119,15 +121,16 @@ function explains(alignment: Alignment, fromFrame: number, toFrame: number): boo
 export function createTracker(index: CatalogueIndex, peaks: PeakStore): Tracker {
   const { totalFrames } = index
   const source = createBlockLandmarkSource(peaks)
-  const rejected: { readonly recordingNumber: number; readonly offset: number; readonly block: number }[] = []
+  const rejected: Rejected[] = []
   let running: Running[] = []
 
   const isRejected = (candidate: Candidate, block: number): boolean => {
     while (rejected.length > 0 && rejected[0].block < block - REJECTED_BLOCKS) rejected.shift()
     return rejected.some(
-      ({ recordingNumber, offset }) =>
-        recordingNumber === candidate.recording.recordingNumber &&
-        Math.abs(offset - candidate.offset) <= SAME_OFFSET_FRAMES,
+      ({ candidate: { recording, offset, hits } }) =>
+        recording.recordingNumber === candidate.recording.recordingNumber &&
+        Math.abs(offset - candidate.offset) <= SAME_OFFSET_FRAMES &&
+        candidate.hits < SECOND_LOOK_GROWTH * hits,
     )
   }
 
@@ -140,11 +143,7 @@ export function createTracker(index: CatalogueIndex, peaks: PeakStore): Tracker 
       if (isRejected(candidate, toBlock)) return
       for (let block = fromBlock; block < toBlock; block++) probeBlock(source, alignment, block)
       if (!isPromising(alignment, totalFrames)) {
-        rejected.push({
-          recordingNumber: recording.recordingNumber,
-          offset: candidate.offset,
-          block: toBlock,
-        })
+        rejected.push({ candidate, block: toBlock })
         return
       }
       running.push({ alignment, firstFrame: lookBack(source, alignment, fromBlock) })
