@@ -1,13 +1,10 @@
 import { createHitCollector, mergeHits, type AlignedHits } from './aligned-hits.ts'
 import { createOffsetBackground, type BackgroundLaw } from './background.ts'
-import { BLOCK_FRAMES, type BlockLandmarks } from './block-landmarks.ts'
+import { BLOCK_FRAMES, type BlockLandmarks, type SpeedVariant } from './block-landmarks.ts'
 import type { PlacedRecording } from './catalogue-index.ts'
 import { firstSlotAt } from './index-segment.ts'
 import { bestSpan, type Span } from './span.ts'
 import { logOverdispersedTail } from './statistics.ts'
-
-/** How the sound of the log was changed against the reference; times of the log are multiplied by the ratio. */
-export type SpeedVariant = { readonly speedRatio: number; readonly pitchFollowsSpeed: boolean }
 
 /** What speaks for one recording at one alignment. Frames of the log are those of the recording. */
 export type AlignmentEvidence = {

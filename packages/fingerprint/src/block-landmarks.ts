@@ -1,8 +1,10 @@
-import type { SpeedVariant } from './alignment.ts'
 import { createNumberList } from './growable.ts'
 import { endOfHash, startOfHash, type IndexSegment } from './index-segment.ts'
 import { pairPeaks } from './landmarks.ts'
 import type { PeakStore } from './peak-store.ts'
+
+/** How the sound of the log was changed against the reference; times of the log are multiplied by the ratio. */
+export type SpeedVariant = { readonly speedRatio: number; readonly pitchFollowsSpeed: boolean }
 
 /** Frames of a block, the step in which a log is worked through: about two seconds. */
 export const BLOCK_FRAMES = 64

@@ -1,4 +1,4 @@
-export type { SpeedVariant } from './alignment.ts'
+export type { SpeedVariant } from './block-landmarks.ts'
 export {
   createIndex,
   type CatalogueIndex,

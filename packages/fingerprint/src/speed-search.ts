@@ -1,4 +1,4 @@
-import type { SpeedVariant } from './alignment.ts'
+import type { SpeedVariant } from './block-landmarks.ts'
 import type { CatalogueIndex } from './catalogue-index.ts'
 import { pairPeaks } from './landmarks.ts'
 import { createOffsetHistogram, type Candidate, type OffsetHistogram } from './offset-histogram.ts'

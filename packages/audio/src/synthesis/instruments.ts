@@ -1,5 +1,7 @@
 import type { Random } from './random.ts'
-import type { Part } from './tune.ts'
+
+/** A part of the band; each has its own instrument. */
+export type Part = 'melody' | 'chords' | 'bass' | 'pad'
 
 /** How loudness rises, falls, holds and dies away. */
 export type Envelope = {

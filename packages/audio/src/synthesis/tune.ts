@@ -1,10 +1,9 @@
-import type { Instrument } from './instruments.ts'
+import type { Instrument, Part } from './instruments.ts'
+
+export type { Part }
 
 /** Scales the generated tunes use. */
 export type Mode = 'major' | 'minor' | 'dorian' | 'mixolydian'
-
-/** A part of the band; each has its own instrument. */
-export type Part = 'melody' | 'chords' | 'bass' | 'pad'
 
 /** One note as it is played, timing already humanised. */
 export type Note = {

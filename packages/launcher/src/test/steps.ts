@@ -39,8 +39,7 @@ export function listSteps({ scratchDirectory, webDirectory }: StepOptions): read
   return [
     check('lint', 'eslint/bin/eslint.js', '.'),
     check('format', 'prettier/bin/prettier.cjs', '--check', '.'),
-    check('types', 'typescript/bin/tsc', '-p', 'tsconfig.json'),
-    check('types: fingerprint', 'typescript/bin/tsc', '-p', 'packages/fingerprint'),
+    check('types', 'typescript/bin/tsc', '-b', 'tsconfig.json'),
     check('types: web', 'typescript/bin/tsc', '-p', 'apps/web'),
     check(
       'imports',

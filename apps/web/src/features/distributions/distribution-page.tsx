@@ -20,8 +20,7 @@ import { MonthStatusTag } from './month-status-tag.tsx'
 import { PayeeTable } from './payee-table.tsx'
 import { RunFacts } from './run-facts.tsx'
 import { StationMoney } from './station-money.tsx'
-
-export type RunProgress = Extract<ServerEvent, { kind: 'distribution-progress' }>
+import type { RunProgress } from './work-in-hand.tsx'
 
 export function DistributionPage() {
   const { month = '' } = useParams()

@@ -16,11 +16,10 @@ import { callApi } from '../../lib/api-client.ts'
 import { formatMonth } from '../../lib/format-time.ts'
 import { refreshScopes } from '../../lib/query-scopes.ts'
 import { showToast } from '../../lib/toasts.ts'
-import type { RunProgress } from './distribution-page.tsx'
 import { distributionQuery } from './distributions-queries.ts'
 import { ReopenForm } from './reopen-form.tsx'
 import { shortDigest } from './run-facts.tsx'
-import { WorkInHand } from './work-in-hand.tsx'
+import { WorkInHand, type RunProgress } from './work-in-hand.tsx'
 
 type StepsProps = { view: DistributionView; progress: RunProgress | null }
 type Asking = 'approve' | 'issue' | 'reopen' | null

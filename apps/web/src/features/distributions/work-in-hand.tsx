@@ -1,6 +1,7 @@
 import type { MonthStatus } from '@fieldfare/contracts'
 import { ProgressBar } from '../../components/progress-bar.tsx'
-import type { RunProgress } from './distribution-page.tsx'
+
+export type RunProgress = Extract<ServerEvent, { kind: 'distribution-progress' }>
 
 /** What a worker is doing for this month, and how far it is. */
 export function WorkInHand({ status, progress }: { status: MonthStatus; progress: RunProgress | null }) {
