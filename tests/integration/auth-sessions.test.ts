@@ -118,6 +118,16 @@ describe('refreshing', () => {
   })
 })
 
+describe('refreshing while the database does not answer', () => {
+  it('fails, and leaves the session to be refreshed later', async () => {
+    const client = await signInWithPassword()
+    await api.database.schema.renameTable('refresh_tokens', 'refresh_tokens_away')
+    expect((await client.problem(refreshSession)).status).toBe(500)
+    await api.database.schema.renameTable('refresh_tokens_away', 'refresh_tokens')
+    await client.json(refreshSession)
+  })
+})
+
 describe('own sessions', () => {
   it('are listed with the present one marked, and can be ended one by one', async () => {
     const first = await api.signInAs('auditor')

@@ -14,6 +14,7 @@ import {
 } from '@fieldfare/contracts'
 import { Router } from 'express'
 import type { CookieJar } from '../../http/cookie-jar.ts'
+import { AppError } from '../../http/app-error.ts'
 import type { Dependencies } from '../../http/dependencies.ts'
 import { route } from '../../http/route.ts'
 import { clearSessionCookies, REFRESH_COOKIE, setSessionCookies } from '../../http/session-cookies.ts'
@@ -44,7 +45,8 @@ export function createAuthRouter(dependencies: Dependencies): Router {
       try {
         return await enter(await auth.refresh(cookies.get(REFRESH_COOKIE)), cookies)
       } catch (error) {
-        forget(cookies)
+        // A database that is away for a moment has not ended the session.
+        if (error instanceof AppError && error.code === 'not-signed-in') forget(cookies)
         throw error
       }
     }),
