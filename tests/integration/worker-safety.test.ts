@@ -10,6 +10,7 @@ import {
 import {
   claimJob,
   completeJob,
+  configurationSchema,
   createDatabase,
   enqueueJob,
   handBackJob,
@@ -20,20 +21,24 @@ import {
   markLogUnusable,
   releaseSilentJobs,
   saveFingerprint,
+  sendMail,
   type Database,
   type ReferenceToFingerprint,
 } from '@fieldfare/database'
+import { startWorker } from '@fieldfare/worker'
+import { pino } from 'pino'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
-import { createTestDatabase } from '../support/index.ts'
+import { createTestDatabase, temporaryDirectory, testRedis, waitUntil } from '../support/index.ts'
 import { addDetection, addLog, addRecording, addStation } from './feature-data.ts'
 
 /** What the worker relies on where several workers, logs and references meet. */
 let database: Database
+let databaseUrl: string
 let userId: string
 
 beforeAll(async () => {
-  const { url } = await createTestDatabase()
-  database = createDatabase({ databaseUrl: url, applicationName: 'fieldfare-test' })
+  databaseUrl = (await createTestDatabase()).url
+  database = createDatabase({ databaseUrl, applicationName: 'fieldfare-test' })
   const users: { id: string }[] = await database('users')
     .insert({
       email: 'clerk@example.org',
@@ -180,6 +185,57 @@ describe('fingerprints that are stored at the same moment', () => {
       if (waiting.length > 0) return
     }
   }
+})
+
+describe('mail', () => {
+  it('is not given up because the mail server is away for a minute', async () => {
+    const mailId = await inTransaction(database, (trx) =>
+      sendMail(trx, { to: 'somebody@example.org', subject: 'Statement', text: 'It has been issued.' }),
+    )
+    const row = () =>
+      database('jobs')
+        .where({ dedupe_key: `send-mail-${mailId}` })
+        .first<{ status: string; attempts: number; isPaused: boolean }>(
+          'status',
+          'attempts',
+          database.raw(`run_after > now() + interval '1 minute' as "isPaused"`),
+        )
+    await database('jobs')
+      .where({ dedupe_key: `send-mail-${mailId}` })
+      .update({ attempts: 4 })
+    const configuration = configurationSchema.parse({
+      FIELDFARE_MODE: 'test',
+      FIELDFARE_DATABASE_URL: databaseUrl,
+      FIELDFARE_REDIS_URL: (await testRedis()).url,
+      FIELDFARE_STORAGE_DIR: await temporaryDirectory('storage'),
+      FIELDFARE_TOKEN_SECRET: 'a secret that only the tests of this product know',
+      FIELDFARE_WORKER_THREADS: '1',
+      FIELDFARE_MAIL: 'smtp',
+      // Nothing listens on the first port.
+      FIELDFARE_SMTP_URL: 'smtp://127.0.0.1:1',
+    })
+    const worker = await startWorker(configuration, pino({ level: 'silent' }))
+    try {
+      const settled = await waitUntil(
+        async () => {
+          const job = await row()
+          return job.status === 'failed' || job.attempts === 5 ? job : null
+        },
+        { timeoutMs: 20_000, description: 'one try of the mail' },
+      )
+      expect(settled.attempts).toBe(5)
+      const after = await waitUntil(
+        async () => {
+          const job = await row()
+          return job.status === 'running' ? null : job
+        },
+        { timeoutMs: 20_000, description: 'the try settled' },
+      )
+      expect(after).toEqual({ status: 'waiting', attempts: 5, isPaused: true })
+    } finally {
+      await worker.stop()
+    }
+  })
 })
 
 describe('a job', () => {

@@ -38,8 +38,15 @@ export class JobTakenAway extends Error {
   override readonly name = 'JobTakenAway'
 }
 
+/** Tries before a job counts as failed, and the pause after each. */
+export type Retries = { attempts: number; pauseMs: (attempts: number) => number }
+
+const FEW_RETRIES: Retries = { attempts: 3, pauseMs: (attempts) => 5000 * attempts }
+
 export type JobHandler<Kind extends JobKind> = {
   run: (context: JobContext, payload: JobPayload<Kind>) => Promise<void>
+  /** Where a few tries within seconds are not enough. */
+  retries?: Retries
   /** Says on the subject itself that the job failed for good, in the transaction that fails the job. */
   onFailure?: (trx: Transaction, payload: JobPayload<Kind>, reason: string) => Promise<void>
 }
@@ -47,6 +54,7 @@ export type JobHandler<Kind extends JobKind> = {
 /** A handler whose payload is still to be parsed: what the runner can call without knowing the kind. */
 export type RunnableJob = {
   run: (context: JobContext, payload: unknown) => Promise<void>
+  retries: Retries
   onFailure: (trx: Transaction, payload: unknown, reason: string) => Promise<void>
 }
 
@@ -57,6 +65,7 @@ export function bindJob<Kind extends JobKind>(kind: Kind, handler: JobHandler<Ki
   const parse = (payload: unknown): JobPayload<Kind> => payloadSchemas[kind].parse(payload)
   return {
     run: (context, payload) => handler.run(context, parse(payload)),
+    retries: handler.retries ?? FEW_RETRIES,
     onFailure: async (trx, payload, reason) => handler.onFailure?.(trx, parse(payload), reason),
   }
 }

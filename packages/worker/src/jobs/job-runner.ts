@@ -16,16 +16,14 @@ import {
   JobRefused,
   JobTakenAway,
   type JobContext,
+  type Retries,
   type RunnableJob,
   type WorkerServices,
 } from './job-context.ts'
 
 export type JobHandlers = Readonly<Record<JobKind, RunnableJob>>
 
-/** Tries before a job counts as failed; the pauses between them grow. */
-export const MOST_ATTEMPTS = 3
 const MOST_CRASHES = 2
-const PAUSE_MS = 5000
 const HEARTBEAT_MS = JOB_SILENCE_MS / 5
 
 type RunnerOptions = { services: WorkerServices; handlers: JobHandlers; workerName: string }
@@ -77,14 +75,16 @@ async function runClaimed(
         await handler.onFailure(trx, job.payload, reason)
     })
   // A job during which the process died again and again would take every worker down.
-  if (job.attempts > MOST_ATTEMPTS + MOST_CRASHES) {
+  if (job.attempts > handler.retries.attempts + MOST_CRASHES) {
     await fail('The worker ended while doing this, again and again.')
     return
   }
   try {
     await handler.run(contextFor(options, job.id, signal), job.payload)
   } catch (error) {
-    await settleFailure(options, job, error, { fail, isStopping: signal.aborted })
+    // What breaks off once the job was taken away is another's to settle, even if that other is this very worker.
+    const cause: unknown = signal.reason instanceof JobTakenAway ? signal.reason : error
+    await settleFailure(options, job, cause, { fail, retries: handler.retries, isStopping: signal.aborted })
   }
 }
 
@@ -92,7 +92,11 @@ async function settleFailure(
   { services, workerName }: RunnerOptions,
   job: ClaimedJob,
   error: unknown,
-  { fail, isStopping }: { fail: (reason: string) => Promise<void>; isStopping: boolean },
+  {
+    fail,
+    retries,
+    isStopping,
+  }: { fail: (reason: string) => Promise<void>; retries: Retries; isStopping: boolean },
 ): Promise<void> {
   const { database, logger } = services
   const about = { jobId: job.id, kind: job.kind, attempts: job.attempts }
@@ -110,12 +114,12 @@ async function settleFailure(
     return
   }
   logger.error({ ...about, error }, 'job broke off')
-  if (job.attempts >= MOST_ATTEMPTS) {
+  if (job.attempts >= retries.attempts) {
     await fail(`It broke off ${job.attempts} times. The log of the worker has the details.`)
     return
   }
   const message = error instanceof Error ? error.message : String(error)
-  await postponeJob(database, job.id, workerName, { message, delayMs: PAUSE_MS * job.attempts })
+  await postponeJob(database, job.id, workerName, { message, delayMs: retries.pauseMs(job.attempts) })
 }
 
 /**
