@@ -1,5 +1,6 @@
 import { randomBytes, randomUUID } from 'node:crypto'
 import {
+  distributionIdSchema,
   mailMessageIdSchema,
   referenceAudioIdSchema,
   type JobId,
@@ -18,6 +19,7 @@ import {
   insertPlaysForAccepted,
   JOB_SILENCE_MS,
   listFingerprintsAfter,
+  lockDistributionRun,
   markLogUnusable,
   releaseSilentJobs,
   saveFingerprint,
@@ -235,6 +237,38 @@ describe('mail', () => {
     } finally {
       await worker.stop()
     }
+  })
+})
+
+describe('a run whose statements were asked for', () => {
+  it('knows since when', async () => {
+    const month = '2031-01-01'
+    await database('distribution_months').insert({ month, status: 'calculating' })
+    const rows: { id: string }[] = await database('distributions')
+      .insert({
+        month,
+        run: 1,
+        rules_version: '1',
+        currency: 'EUR',
+        currency_digits: 2,
+        requested_by: userId,
+      })
+      .returning('id')
+    const distributionId = distributionIdSchema.parse(rows[0]?.id)
+    const requestedAt = () =>
+      inTransaction(
+        database,
+        async (trx) => (await lockDistributionRun(trx, distributionId))?.issueRequestedAt,
+      )
+    expect(await requestedAt()).toBeNull()
+    await inTransaction(database, (trx) =>
+      enqueueJob(trx, {
+        kind: 'render-statements',
+        payload: { distributionId },
+        dedupeKey: `render-statements-${distributionId}`,
+      }),
+    )
+    expect(await requestedAt()).toMatch(/^\d{4}-/)
   })
 })
 

@@ -16,6 +16,8 @@ export type DistributionRun = {
   digest: string | null
   approvedAt: Instant | null
   requestedAt: Instant
+  /** When the statements were first asked for; null before. */
+  issueRequestedAt: Instant | null
 }
 
 export async function lockDistributionRun(
@@ -41,6 +43,10 @@ export async function lockDistributionRun(
       },
       trx.raw('r.minimum_ms::float8 as "minimumMs"'),
       trx.raw('r.cap_ms::float8 as "capMs"'),
+      // One job makes the statements of a run, however often it is tried again.
+      trx.raw(
+        `(select created_at from jobs where dedupe_key = 'render-statements-' || d.id) as "issueRequestedAt"`,
+      ),
     )
   return row ?? null
 }

@@ -54,9 +54,11 @@ export function describeStatementDocument(options: {
 }): StatementDocument {
   const { run, statement, contents, society, publicUrl } = options
   const month = DateTime.fromISO(run.month, { zone: 'utc', locale: 'en-GB' })
-  // The approval dates the statement: the moment of rendering would differ between two tries.
+  // The request dates the statement: the moment of rendering would differ between two tries.
   const approvedAt = run.approvedAt ?? run.requestedAt
   const approvedOn = DateTime.fromISO(approvedAt, { zone: society.timeZone })
+  const issuedAt = run.issueRequestedAt ?? approvedAt
+  const issuedOn = DateTime.fromISO(issuedAt, { zone: society.timeZone })
   return {
     societyName: society.name,
     payeeName: statement.partyName,
@@ -66,9 +68,9 @@ export function describeStatementDocument(options: {
     monthLabel: month.toFormat('LLLL yyyy'),
     firstDay: month.toFormat('yyyy-LL-dd'),
     lastDay: month.endOf('month').toFormat('yyyy-LL-dd'),
-    createdAt: approvedAt,
+    createdAt: issuedAt,
     approvedOn: approvedOn.toFormat('yyyy-LL-dd'),
-    issuedOn: approvedOn.toFormat('yyyy-LL-dd'),
+    issuedOn: issuedOn.toFormat('yyyy-LL-dd'),
     currency: run.currency,
     ruleVersion: run.rulesVersion,
     grossMinor: statement.grossMinor,
@@ -96,7 +98,7 @@ export function describeStatementDocument(options: {
       explanation: holdback.reason,
       amountMinor: holdback.amountMinor,
     })),
-    questionUntil: approvedOn.plus({ days: run.questionDays }).toFormat('yyyy-LL-dd'),
+    questionUntil: issuedOn.plus({ days: run.questionDays }).toFormat('yyyy-LL-dd'),
     questionContact: `sign in at ${publicUrl}, open the statement and dispute the play`,
   }
 }
