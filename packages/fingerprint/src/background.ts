@@ -6,6 +6,8 @@ export const OFFSET_BIN_FRAMES = 2 ** OFFSET_BIN_SHIFT
 const SELF_LIKENESS_SHARE = 0.1
 /** Gives back the spread that leaving out the highest takes away. */
 const SPREAD_ALLOWANCE = 2
+/** Landmarks share peaks, so hits come in small groups even by chance. */
+const LEAST_DISPERSION = 1.3
 
 /** What chance gives at one offset; dispersion is variance over mean. */
 export type BackgroundLaw = { readonly mean: number; readonly dispersion: number }
@@ -22,7 +24,7 @@ export function describeBackground(pairCounts: ArrayLike<number>): BackgroundLaw
   }
   const mean = Math.max(sum / kept, 0.5 / kept)
   const variance = squares / kept - (sum / kept) ** 2
-  return { mean, dispersion: 1.1 + SPREAD_ALLOWANCE * Math.max(0, variance / mean - 1) }
+  return { mean, dispersion: LEAST_DISPERSION + SPREAD_ALLOWANCE * Math.max(0, variance / mean - 1) }
 }
 
 /** Hits of one recording at all the offsets beside the alignment. */

@@ -40,7 +40,7 @@ export type DetectionThresholds = {
 
 export const defaultThresholds: DetectionThresholds = {
   acceptFalseAlarms: 1e-6,
-  reviewFalseAlarms: 1e-2,
+  reviewFalseAlarms: 1e-4,
   shortestSeconds: 3,
   sparseHitsPerSecond: 6,
   sparseSeconds: 20,

@@ -1,13 +1,11 @@
-import {
-  createAlignment,
-  logChanceOf,
-  spanOf,
-  type Alignment,
-  type AlignmentEvidence,
-  type SpeedVariant,
-} from './alignment.ts'
+import { createAlignment, logChanceOf, spanOf, type Alignment, type AlignmentEvidence } from './alignment.ts'
 import type { CatalogueIndex } from './catalogue-index.ts'
-import { BLOCK_FRAMES, createBlockLandmarkSource, type BlockLandmarkSource } from './block-landmarks.ts'
+import {
+  BLOCK_FRAMES,
+  createBlockLandmarkSource,
+  type BlockLandmarkSource,
+  type SpeedVariant,
+} from './block-landmarks.ts'
 import { logFalseAlarms } from './detection.ts'
 import type { Candidate } from './offset-histogram.ts'
 import type { PeakStore } from './peak-store.ts'
