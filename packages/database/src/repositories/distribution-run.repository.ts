@@ -119,11 +119,18 @@ export type MonthPlay = {
   creditedMs: number
 }
 
+/** Counted plays of the month on days for which their station has a licence: on other days there is no fee to share. */
 export async function listMonthPlays(connection: Connection, month: string): Promise<MonthPlay[]> {
   return connection('plays as p')
     .join('recordings as r', 'r.id', 'p.recording_id')
     .where('p.status', 'counted')
     .whereRaw("p.local_day >= ?::date and p.local_day < (?::date + interval '1 month')", [month, month])
+    .whereExists(
+      connection('licences as l')
+        .whereRaw('l.station_id = p.station_id')
+        .whereRaw("p.local_day <@ daterange(l.valid_from, l.valid_to, '[]')")
+        .select(connection.raw('1')),
+    )
     .orderBy('p.id')
     .select<MonthPlay[]>(
       {
