@@ -36,7 +36,11 @@ function Head({ columns }: { columns: readonly { header: string; isFigure: boole
     <thead>
       <tr className="border-b border-ink">
         {columns.map(({ header, isFigure }) => (
-          <th key={header} scope="col" className={isFigure ? 'text-right' : 'text-left'}>
+          <th
+            key={header}
+            scope="col"
+            className={classNames('align-bottom whitespace-normal', isFigure ? 'text-right' : 'text-left')}
+          >
             {header}
           </th>
         ))}
