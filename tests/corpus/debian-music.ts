@@ -61,9 +61,14 @@ export async function fetchDebianMusic(packageName: string): Promise<MusicTrack[
     () => false,
   )
   if (!isThere) await unpack(packageName, target)
-  const files = await readdir(target, { recursive: true })
-  return files
-    .filter((file) => AUDIO.has(extname(file).toLowerCase()))
-    .map((file) => ({ packageName, name: basename(file, extname(file)), path: join(target, file) }))
+  const entries = await readdir(target, { recursive: true, withFileTypes: true })
+  // Links would list a piece twice, under another name.
+  return entries
+    .filter((entry) => entry.isFile() && AUDIO.has(extname(entry.name).toLowerCase()))
+    .map(({ name, parentPath }) => ({
+      packageName,
+      name: basename(name, extname(name)),
+      path: join(parentPath, name),
+    }))
     .sort((a, b) => (a.path < b.path ? -1 : 1))
 }
