@@ -1,4 +1,4 @@
-import type { DistributionView, ServerEvent } from '@fieldfare/contracts'
+import type { DistributionView } from '@fieldfare/contracts'
 import { useQuery } from '@tanstack/react-query'
 import { useState } from 'react'
 import { useNavigate, useParams } from 'react-router'

@@ -1,4 +1,4 @@
-import type { MonthStatus } from '@fieldfare/contracts'
+import type { MonthStatus, ServerEvent } from '@fieldfare/contracts'
 import { ProgressBar } from '../../components/progress-bar.tsx'
 
 export type RunProgress = Extract<ServerEvent, { kind: 'distribution-progress' }>
