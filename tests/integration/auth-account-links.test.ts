@@ -1,5 +1,6 @@
 import {
   acceptInvitation,
+  changePassword,
   getSession,
   inviteUser,
   listInbox,
@@ -125,5 +126,15 @@ describe('a password reset', () => {
     await api.anonymous().call(requestPasswordReset, { body: { email: user.email } })
     const token = await lastLinkTo(user.email)
     expect((await api.anonymous().problem(readInvitation, { body: { token } })).code).toBe('link-expired')
+  })
+
+  it('works no longer once the person has changed the password themselves', async () => {
+    const { client, user } = await api.signInAs('clerk')
+    await api.anonymous().call(requestPasswordReset, { body: { email: user.email } })
+    const token = await lastLinkTo(user.email)
+    const passwords = { currentPassword: TEST_PASSWORD, newPassword: 'a password of my choice' }
+    expect((await client.call(changePassword, { body: passwords })).status).toBe(204)
+    const body = { token, password: 'a password of another' }
+    expect((await api.anonymous().problem(resetPassword, { body })).code).toBe('link-expired')
   })
 })

@@ -7,6 +7,7 @@ import {
   readPasswordHash,
   recordAudit,
   updatePasswordHash,
+  voidAccountTokens,
   type Actor,
   type SessionRecord,
 } from '@fieldfare/database'
@@ -54,6 +55,8 @@ export function createOwnSessionsService(dependencies: Dependencies) {
     const passwordHash = await hashPassword(passwords.newPassword, 'newPassword')
     const ended = await inTransaction(database, async (trx) => {
       await updatePasswordHash(trx, actor.userId, passwordHash)
+      // A link asked for before, perhaps by somebody else, must not undo this.
+      await voidAccountTokens(trx, actor.userId, 'password-reset')
       await recordAudit(trx, {
         actor,
         action: 'change-password',
