@@ -74,6 +74,18 @@ async function statusOf(id: JobId): Promise<string | undefined> {
   return row?.status
 }
 
+it('dispatches on beside a job of a kind that only a newer version knows', async () => {
+  await database('jobs').insert({ kind: 'from-the-future', payload: '{}', dedupe_key: 'from-the-future' })
+  const id = await enqueue()
+  expect(await dispatcher.dispatch()).toBe(1)
+  expect(await waitingInRedis()).toBe(1)
+  expect(await statusOf(id)).toBe('waiting')
+  expect(await database('jobs').where({ kind: 'from-the-future' }).first('status', 'queued_at')).toEqual({
+    status: 'waiting',
+    queued_at: null,
+  })
+})
+
 describe('enqueueJob', () => {
   it('makes one job however often it is asked', async () => {
     const [first, second] = await Promise.all([enqueue('the-same'), enqueue('the-same')])

@@ -159,6 +159,8 @@ export async function takeJobsToQueue(
 ): Promise<{ id: JobId; kind: string }[]> {
   const due = trx('jobs')
     .where({ status: 'waiting' })
+    // What only a newer version knows waits for a worker of that version.
+    .whereIn('kind', Object.keys(jobPayloadSchemas))
     .whereRaw('run_after <= now()')
     .andWhere((stray) =>
       stray
