@@ -1,5 +1,5 @@
 import { cutClip } from '@fieldfare/audio'
-import { findClipAudio } from '@fieldfare/database'
+import { clipStorageKey, findClipAudio } from '@fieldfare/database'
 import { mkdtemp, rm } from 'node:fs/promises'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
@@ -7,11 +7,6 @@ import { JobRefused, type JobHandler } from './job-context.ts'
 
 /** Long enough to decide by ear, short enough to load at once. */
 const CLIP_SECONDS = 30
-
-/** Where a clip lies in storage once it was cut. */
-export function clipStorageKey(detectionId: string, source: string, fromSeconds: number): string {
-  return `clips/${detectionId}-${source}-${fromSeconds}.mp3`
-}
 
 /** Cuts a clip of a log or of its reference, both beginning at the same moment of the music. */
 export const cutClipJob: JobHandler<'cut-clip'> = {
@@ -32,7 +27,7 @@ export const cutClipJob: JobHandler<'cut-clip'> = {
       await storage.withLocalFile(storageKey, (path) =>
         cutClip(path, { startSeconds, durationSeconds: Math.min(CLIP_SECONDS, left) }, filePath),
       )
-      await storage.put(clipStorageKey(detectionId, source, fromSeconds), { filePath })
+      await storage.put(clipStorageKey({ detectionId, source, fromSeconds }), { filePath })
     } finally {
       await rm(directory, { recursive: true, force: true })
     }

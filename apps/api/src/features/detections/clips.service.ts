@@ -1,6 +1,6 @@
 import { setTimeout as pause } from 'node:timers/promises'
 import type { ClipSource, DetectionId } from '@fieldfare/contracts'
-import { inTransaction, type Scope } from '@fieldfare/database'
+import { clipFileName, clipStorageKey, inTransaction, type Scope } from '@fieldfare/database'
 import { AppError, fieldRefused, notFound } from '../../http/app-error.ts'
 import type { Dependencies } from '../../http/dependencies.ts'
 import { storedFile, type FileAnswer } from '../../http/file-answer.ts'
@@ -11,15 +11,6 @@ export type ClipRequest = { detectionId: DetectionId; source: ClipSource; fromSe
 
 const WAIT_MS = 20_000
 const POLL_MS = 200
-
-function clipName({ detectionId, source, fromSeconds }: ClipRequest): string {
-  return `${detectionId}-${source}-${fromSeconds}.mp3`
-}
-
-/** Where the worker puts the clip. */
-export function clipKey(clip: ClipRequest): string {
-  return `clips/${clipName(clip)}`
-}
 
 function refuseWithoutAudio(detection: DetectionEvidenceRow, source: ClipSource): void {
   if (source === 'log' && !detection.isLogAudioKept) {
@@ -38,7 +29,7 @@ async function waitForClip(
 ): Promise<void> {
   const { database, storage } = dependencies
   const jobId = await inTransaction(database, (trx) =>
-    askAgain(trx, { kind: 'cut-clip', payload: clip, dedupeKey: `cut-clip-${clipName(clip)}` }),
+    askAgain(trx, { kind: 'cut-clip', payload: clip, dedupeKey: `cut-clip-${clipFileName(clip)}` }),
   )
   const deadline = performance.now() + WAIT_MS
   while (performance.now() < deadline && !signal.aborted) {
@@ -48,7 +39,7 @@ async function waitForClip(
         detail: `The clip could not be made. ${job.errorMessage ?? ''}`.trim(),
       })
     }
-    if (job?.status === 'done' && (await storage.stat(clipKey(clip))) !== null) return
+    if (job?.status === 'done' && (await storage.stat(clipStorageKey(clip))) !== null) return
     await pause(POLL_MS)
   }
   throw new AppError('unavailable', {
@@ -70,7 +61,7 @@ export async function provideClip(
   if (clip.fromSeconds >= detection.durationSeconds) {
     throw fieldRefused('fromSeconds', 'The clip would begin after the end of the detection.')
   }
-  const key = clipKey(clip)
+  const key = clipStorageKey(clip)
   if ((await storage.stat(key)) === null) {
     refuseWithoutAudio(detection, clip.source)
     await waitForClip(dependencies, clip, signal)
